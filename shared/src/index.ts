@@ -11,3 +11,6 @@ export * from './formats/jcamp-reader.js';
 export * from './formats/jcamp.js';
 export * from './nuclides/nuclide-table.js';
 export * from './nuclides/nuclides.js';
+export * from './planning/discrimination.js';
+export * from './planning/ernst-angle.js';
+export * from './planning/sensitivity.js';
