@@ -630,9 +630,7 @@ export interface components {
       createdAt: string;
     };
     Today: {
-      waiting: {
-        [key: string]: unknown;
-      }[];
+      waiting: components['schemas']['RunDto'][];
       running: components['schemas']['RunDto'][];
       recent: components['schemas']['SystemDto'][];
     };

@@ -1,4 +1,5 @@
 import { notifications } from '@mantine/notifications';
+import { useState } from 'react';
 import { messageOf, Problem } from '../api/problem';
 
 interface FormLike {
@@ -18,6 +19,16 @@ export function showProblem(form: FormLike, error: unknown): string | null {
   const homeless = fields.filter(([path]) => !known.includes(path));
   if (homeless.length > 0) return homeless.map(([path, detail]) => `${path}: ${detail}`).join('; ');
   return fields.length > 0 ? null : error.message;
+}
+
+/** `showProblem` with the sentence kept: pass `show` to a mutation's onError, give `message` to `FormRefusal`. */
+export function useProblem(form: FormLike) {
+  const [message, setMessage] = useState<string | null>(null);
+  return {
+    message,
+    show: (error: unknown) => setMessage(showProblem(form, error)),
+    clear: () => setMessage(null),
+  };
 }
 
 /** Says that an action outside a form failed. */
