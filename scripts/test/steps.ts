@@ -37,7 +37,7 @@ export const STEPS: readonly Step[] = [
   { name: 'types-web', title: 'types of apps/web', command: tsc('apps/web') },
   { name: 'types-scripts', title: 'types of scripts', command: tsc('scripts') },
   { name: 'dead-code', title: 'dead code and unused packages', command: [bin('knip/bin/knip.js')] },
-  { name: 'duplicates', title: 'duplicated code', command: [bin('jscpd/bin/jscpd'), '.'] },
+  { name: 'duplicates', title: 'duplicated code', command: [bin('jscpd/bin/jscpd'), '--config', '.jscpd.json'] },
   vitest('shared', 'tests of shared', 'shared'),
   vitest('scripts', 'tests of the headless command', 'scripts'),
   vitest('web', 'tests of apps/web', 'apps/web'),
