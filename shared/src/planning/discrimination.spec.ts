@@ -23,7 +23,10 @@ function signal(offsets: number[], height = 1): ComparedSignal {
     }
     return (2 / width) * sum;
   });
-  return { fid: { real, imag }, spectrum: { firstPpm: 127, lastPpm: -128, real: absorption, imag: new Float64Array(points) } };
+  return {
+    fid: { real, imag },
+    spectrum: { firstPpm: 127, lastPpm: -128, real: absorption, imag: new Float64Array(points) },
+  };
 }
 
 const budget = { noise: 0.5, repetition: 4 };

@@ -1,5 +1,12 @@
 import { describe, expect, it } from 'vitest';
-import { noiseOfOneScan, noiseWindow, nuclearSensitivity, scansFor, signalToNoise, type ReferenceSensitivity } from './sensitivity.js';
+import {
+  noiseOfOneScan,
+  noiseWindow,
+  nuclearSensitivity,
+  scansFor,
+  signalToNoise,
+  type ReferenceSensitivity,
+} from './sensitivity.js';
 
 const reference: ReferenceSensitivity = {
   isotope: '1H',

@@ -68,7 +68,8 @@ export function scansFor(wanted: number, single: number): number {
 export function noiseWindow(acquisitionTime: number, exponential: number, gaussian: number): number {
   const intervals = 2000;
   const step = acquisitionTime / intervals;
-  const weight = (t: number) => Math.exp(-2 * Math.PI * exponential * t - (Math.PI * gaussian * t) ** 2 / (2 * Math.LN2));
+  const weight = (t: number) =>
+    Math.exp(-2 * Math.PI * exponential * t - (Math.PI * gaussian * t) ** 2 / (2 * Math.LN2));
   let sum = (weight(0) + weight(acquisitionTime)) / 2;
   for (let i = 1; i < intervals; i++) sum += weight(i * step);
   return sum * step;

@@ -27,11 +27,18 @@ export function ArcView({ arc, faded, handle, onDrag, onStep, onType }: ArcViewP
     if (change !== null) onStep(change);
   };
   return (
-    <g className={classes.arc} data-kind={arc.kind} data-faded={faded || undefined} data-negative={(arc.value ?? 0) < 0 || undefined}>
+    <g
+      className={classes.arc}
+      data-kind={arc.kind}
+      data-faded={faded || undefined}
+      data-negative={(arc.value ?? 0) < 0 || undefined}
+    >
       <path d={arc.path} className={classes.arcLine} strokeWidth={arc.thickness}>
         <title>{title}</title>
       </path>
-      {arc.kind === 'exchange' && <path d={arc.path} className={classes.arcCore} strokeWidth={Math.max(1, arc.thickness - 2)} />}
+      {arc.kind === 'exchange' && (
+        <path d={arc.path} className={classes.arcCore} strokeWidth={Math.max(1, arc.thickness - 2)} />
+      )}
       {handle && (
         <g
           className={classes.handle}

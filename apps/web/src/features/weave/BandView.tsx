@@ -33,7 +33,13 @@ export function BandView({ band, width, selected, partners, onSelect, onDrag, on
       <line x1={WEAVE.marginX} x2={width - WEAVE.marginX} y1={band.axisY} y2={band.axisY} className={classes.axis} />
       {band.ticks.map((tick) => (
         <g key={tick} aria-hidden>
-          <line x1={ppmToX(band.scale, tick)} x2={ppmToX(band.scale, tick)} y1={band.axisY} y2={band.axisY + 4} className={classes.axis} />
+          <line
+            x1={ppmToX(band.scale, tick)}
+            x2={ppmToX(band.scale, tick)}
+            y1={band.axisY}
+            y2={band.axisY + 4}
+            className={classes.axis}
+          />
           <text x={ppmToX(band.scale, tick)} y={band.axisY + 17} className={classes.tick}>
             {tick.toFixed(decimals)}
           </text>
@@ -55,7 +61,12 @@ export function BandView({ band, width, selected, partners, onSelect, onDrag, on
           />
         ))}
       {band.bundles.map((bundle) => (
-        <BundleView key={bundleKey(bundle.ids)} band={band} bundle={bundle} onOpen={() => onOpen(bundleKey(bundle.ids))} />
+        <BundleView
+          key={bundleKey(bundle.ids)}
+          band={band}
+          bundle={bundle}
+          onOpen={() => onOpen(bundleKey(bundle.ids))}
+        />
       ))}
     </g>
   );
@@ -100,8 +111,21 @@ function ThreadView({ band, thread, selected, faded, onSelect, onDrag, onStep, o
       onDoubleClick={onType}
     >
       <rect x={thread.x - 12} y={labelY - 12} width={24} height={band.axisY - labelY + 12} className={classes.target} />
-      <line x1={thread.x} x2={thread.x} y1={labelY + 3} y2={band.axisY} strokeWidth={thread.thickness} className={classes.threadLine} />
-      <ellipse cx={thread.x} cy={band.threadTop + WEAVE.threadHeight / 2} rx={thread.thickness / 2 + 2.5} ry={7} className={classes.eye} />
+      <line
+        x1={thread.x}
+        x2={thread.x}
+        y1={labelY + 3}
+        y2={band.axisY}
+        strokeWidth={thread.thickness}
+        className={classes.threadLine}
+      />
+      <ellipse
+        cx={thread.x}
+        cy={band.threadTop + WEAVE.threadHeight / 2}
+        rx={thread.thickness / 2 + 2.5}
+        ry={7}
+        className={classes.eye}
+      />
       <text x={thread.x} y={labelY} className={classes.label}>
         {thread.id}
       </text>
@@ -124,9 +148,22 @@ function BundleView({ band, bundle, onOpen }: { band: Band; bundle: Bundle; onOp
       }}
     >
       <title>{bundle.ids.join(', ')}</title>
-      <rect x={bundle.x - 12} y={band.threadTop - 18} width={24} height={WEAVE.threadHeight + 18} className={classes.target} />
+      <rect
+        x={bundle.x - 12}
+        y={band.threadTop - 18}
+        width={24}
+        height={WEAVE.threadHeight + 18}
+        className={classes.target}
+      />
       {[-3, 0, 3].map((dx) => (
-        <line key={dx} x1={bundle.x + dx} x2={bundle.x + dx} y1={band.threadTop} y2={band.axisY} className={classes.threadLine} />
+        <line
+          key={dx}
+          x1={bundle.x + dx}
+          x2={bundle.x + dx}
+          y1={band.threadTop}
+          y2={band.axisY}
+          className={classes.threadLine}
+        />
       ))}
       <text x={bundle.x} y={band.threadTop - 5} className={classes.label}>
         {bundle.count} nuclei

@@ -81,7 +81,9 @@ export function Weave({ system, observed, selected, onSelect, onShift, onCouplin
               key={arc.key}
               arc={arc}
               faded={selected !== null && arc.a !== selected && arc.b !== selected}
-              handle={arc.kind === 'scalar' && (layout.arcs.length <= ALL_HANDLES || arc.a === selected || arc.b === selected)}
+              handle={
+                arc.kind === 'scalar' && (layout.arcs.length <= ALL_HANDLES || arc.a === selected || arc.b === selected)
+              }
               onDrag={(event) => dragArc(event, arc)}
               onStep={(change) => onCoupling(arc.a, arc.b, tidy((arc.value ?? 0) + change), true)}
               onType={() => setEntry({ kind: 'j', a: arc.a, b: arc.b, ...arc.handle, value: arc.value ?? 0 })}
@@ -97,7 +99,9 @@ export function Weave({ system, observed, selected, onSelect, onShift, onCouplin
               onSelect={onSelect}
               onDrag={dragThread}
               onStep={(thread, change) => onShift(thread.id, tidy(thread.shift + change), true)}
-              onType={(thread) => setEntry({ kind: 'shift', id: thread.id, x: thread.x, y: band.threadTop, value: thread.shift })}
+              onType={(thread) =>
+                setEntry({ kind: 'shift', id: thread.id, x: thread.x, y: band.threadTop, value: thread.shift })
+              }
               onOpen={(key) => setOpened(new Set([...opened, key]))}
             />
           ))}

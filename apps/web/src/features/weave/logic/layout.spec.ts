@@ -16,7 +16,12 @@ const pair = systemOf(
     { id: 'Hb', isotope: '1H', shift: 5, count: 3 },
     { id: 'C', isotope: '13C', shift: 120 },
   ],
-  { couplings: [{ between: ['Ha', 'Hb'], j: -9 }, { between: ['Ha', 'C'], j: 160 }] },
+  {
+    couplings: [
+      { between: ['Ha', 'Hb'], j: -9 },
+      { between: ['Ha', 'C'], j: 160 },
+    ],
+  },
 );
 
 describe('layout of the weave', () => {
@@ -72,7 +77,11 @@ describe('layout of the weave', () => {
   });
 
   it('folds crowded neighbours of a large system and unfolds them on request', () => {
-    const nuclei = Array.from({ length: 30 }, (_, i) => ({ id: `H${i}`, isotope: '1H', shift: 1 + (i % 6) + i * 1e-3 }));
+    const nuclei = Array.from({ length: 30 }, (_, i) => ({
+      id: `H${i}`,
+      isotope: '1H',
+      shift: 1 + (i % 6) + i * 1e-3,
+    }));
     const layout = layoutOf(systemOf(nuclei));
     expect(layout.bands[0].bundles.map((bundle) => bundle.count)).toEqual([5, 5, 5, 5, 5, 5]);
     const first = bundleKey(layout.bands[0].bundles[0].ids);

@@ -105,8 +105,16 @@ function placeBand(system: SpinSystem, isotope: string, top: number, options: La
   const range =
     options.observed?.isotope === isotope
       ? options.observed
-      : rangeOfShifts(nuclei.map((nucleus) => nucleus.shift), MINIMUM_RANGE[isotope] ?? OTHER_MINIMUM_RANGE);
-  const scale: PpmScale = { high: range.high, low: range.low, left: WEAVE.marginX, width: options.width - 2 * WEAVE.marginX };
+      : rangeOfShifts(
+          nuclei.map((nucleus) => nucleus.shift),
+          MINIMUM_RANGE[isotope] ?? OTHER_MINIMUM_RANGE,
+        );
+  const scale: PpmScale = {
+    high: range.high,
+    low: range.low,
+    left: WEAVE.marginX,
+    width: options.width - 2 * WEAVE.marginX,
+  };
   const threads = nuclei
     .map((nucleus) => ({
       id: nucleus.id,
