@@ -6,6 +6,9 @@
 /** Steps allowed for one eigenvalue; two to three are usual (common practice). */
 const MAX_STEPS = 60;
 
+/** Below this a coupling's square is lost to underflow: sqrt of the smallest normal double. */
+const SMALLEST_SQUARABLE = 1.5e-154;
+
 /**
  * Diagonalises T in place.
  *   diagonal      n entries, on return the eigenvalues, ascending
@@ -22,7 +25,7 @@ export function tridiagonalQl(
   stride: number,
   width: number,
 ): void {
-  const floor = Number.EPSILON ** 2 * largest(diagonal, offDiagonal, n);
+  const floor = Math.max(Number.EPSILON ** 2 * largest(diagonal, offDiagonal, n), SMALLEST_SQUARABLE);
   for (let low = 0; low < n - 1; low++) {
     for (let steps = 0; ; steps++) {
       const high = firstSplit(diagonal, offDiagonal, low, n, floor);
