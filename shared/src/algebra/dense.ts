@@ -19,7 +19,11 @@ export interface ComplexMatrix {
 }
 
 /** A real matrix over `data` (kept, not copied), zero if it is left out. */
-export function realMatrix(rows: number, columns: number, data = new Float64Array(rows * columns)): RealMatrix {
+export function realMatrix(
+  rows: number,
+  columns: number,
+  data: Float64Array = new Float64Array(rows * columns),
+): RealMatrix {
   requireShape(data.length === rows * columns, `${rows} x ${columns} matrix over ${data.length} numbers`);
   return { rows, columns, data };
 }
@@ -28,8 +32,8 @@ export function realMatrix(rows: number, columns: number, data = new Float64Arra
 export function complexMatrix(
   rows: number,
   columns: number,
-  real = new Float64Array(rows * columns),
-  imag = new Float64Array(rows * columns),
+  real: Float64Array = new Float64Array(rows * columns),
+  imag: Float64Array = new Float64Array(rows * columns),
 ): ComplexMatrix {
   const size = rows * columns;
   requireShape(real.length === size && imag.length === size, `${rows} x ${columns} matrix over ${real.length} numbers`);
