@@ -18,7 +18,7 @@ export function isPowerOfTwo(n: number): boolean {
 function powerOfTwo(x: ComplexArray, sign: 1 | -1): ComplexArray {
   const n = x.real.length;
   if (n === 1) return { real: x.real.slice(), imag: x.imag.slice() };
-  const transform = new FFT(n);
+  const transform = planOf(n);
   const input = new Float64Array(2 * n);
   // The +i transform is the -i transform with real and imaginary parts exchanged on both sides.
   const [first, second] = sign < 0 ? [x.real, x.imag] : [x.imag, x.real];
@@ -35,6 +35,15 @@ function powerOfTwo(x: ComplexArray, sign: 1 | -1): ComplexArray {
     b[k] = output[2 * k + 1];
   }
   return sign < 0 ? { real: a, imag: b } : { real: b, imag: a };
+}
+
+/** Transforms by length, each with its table of roots. Lengths are powers of two, so they are few. */
+const PLANS = new Map<number, FFT>();
+
+function planOf(n: number): FFT {
+  const plan = PLANS.get(n) ?? new FFT(n);
+  PLANS.set(n, plan);
+  return plan;
 }
 
 /** With w_k = exp(sign pi i k^2/n): X_j = w_j sum_k (x_k w_k) conj(w_{j-k}), a convolution of a power-of-two length. */
