@@ -35,33 +35,41 @@ export function rowLength(grid: OctahedralGrid, i: number): number {
 
 /** Writes the direction of node (i, j) to `out`; returns the solid angle there per unit of the flat face's area. */
 export function nodeDirection(grid: OctahedralGrid, face: number, i: number, j: number, out: Float64Array): number {
-  const { n, faces } = grid;
-  const [x, y, z] = [i / n, j / n, (n - i - j) / n];
-  const inverse = 1 / Math.sqrt(x * x + y * y + z * z);
-  out[0] = faces[face][0] * x * inverse;
-  out[1] = faces[face][1] * y * inverse;
-  out[2] = z * inverse;
-  return inverse ** 3;
+  const signs = grid.faces[face];
+  const k = grid.n - i - j;
+  const inverse = 1 / Math.sqrt(i * i + j * j + k * k);
+  out[0] = signs[0] * i * inverse;
+  out[1] = signs[1] * j * inverse;
+  out[2] = k * inverse;
+  return (grid.n * inverse) ** 3;
 }
 
-/** Rows and columns of a patch's corners 0, 1, 2 and of the middles of the sides opposite them. */
-export type Patch = readonly [i: number, j: number][];
+/** Row and column of a patch's corners 0, 1, 2 and of the middles of the sides opposite them, twelve numbers. */
+export type Patch = Int32Array;
 
 /** Calls `visit` for each patch of `size` (2, or 4 for the smaller set) between rows `first` and `first + BAND_ROWS`. */
 export function forEachPatch(grid: OctahedralGrid, first: number, size: 2 | 4, visit: (patch: Patch) => void): void {
-  const half = size / 2;
+  const patch = new Int32Array(12);
   for (let i = first; i < first + BAND_ROWS; i += size) {
     for (let j = 0; i + j < grid.n; j += size) {
-      // prettier-ignore
-      visit([[i, j], [i + size, j], [i, j + size], [i + half, j + half], [i, j + half], [i + half, j]]);
+      place(patch, i, j, size);
+      visit(patch);
       if (i + j + size >= grid.n) continue;
-      // prettier-ignore
-      visit([
-        [i + size, j + size], [i, j + size], [i + size, j],
-        [i + half, j + half], [i + size, j + half], [i + half, j + size],
-      ]);
+      place(patch, i + size, j + size, -size);
+      visit(patch);
     }
   }
+}
+
+/** A triangle with its right angle at (i, j); a negative size turns it by half a turn. */
+function place(patch: Patch, i: number, j: number, size: number): void {
+  const half = size / 2;
+  patch[0] = patch[4] = patch[8] = i;
+  patch[1] = patch[3] = patch[11] = j;
+  patch[2] = i + size;
+  patch[5] = j + size;
+  patch[6] = patch[10] = i + half;
+  patch[7] = patch[9] = j + half;
 }
 
 /**
@@ -73,7 +81,7 @@ export function patchWeight(grid: OctahedralGrid, size: 2 | 4): number {
   let sum = 0;
   for (let first = 0; first < grid.n; first += BAND_ROWS) {
     forEachPatch(grid, first, size, (patch) => {
-      for (let m = 3; m < 6; m++) sum += nodeDirection(grid, 0, patch[m][0], patch[m][1], direction) / 3;
+      for (let m = 6; m < 12; m += 2) sum += nodeDirection(grid, 0, patch[m], patch[m + 1], direction) / 3;
     });
   }
   return 1 / (sum * grid.faces.length);
