@@ -9,6 +9,7 @@ const FLOORS = [
   'constants',
   'nuclides',
   'documents',
+  'run',
   'algebra',
   'interactions',
   'sequence',

@@ -1,5 +1,5 @@
 import FFT from 'fft.js';
-import type { ComplexArray } from '../simulate/solved.js';
+import type { ComplexArray } from '../run/solved.js';
 
 /**
  * X_j = sum_k x_k exp(sign 2 pi i j k / n), unscaled, for any length n >= 1. Powers of two go straight to fft.js, other
@@ -27,7 +27,7 @@ function powerOfTwo(x: ComplexArray, sign: 1 | -1): ComplexArray {
     input[2 * k + 1] = second[k];
   }
   const output = new Float64Array(2 * n);
-  transform.transform(output as unknown as number[], input as unknown as number[]);
+  transform.transform(output, input);
   const a = new Float64Array(n);
   const b = new Float64Array(n);
   for (let k = 0; k < n; k++) {

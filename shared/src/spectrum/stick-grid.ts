@@ -1,4 +1,4 @@
-import type { ComplexArray } from '../simulate/solved.js';
+import type { ComplexArray } from '../run/solved.js';
 import { fourier } from './fourier.js';
 
 /**

@@ -1,7 +1,7 @@
 import type { Experiment, Processing } from '../documents/experiment.schema.js';
 import type { Spectrum } from '../documents/result.js';
 import { larmorMHz } from '../nuclides/nuclides.js';
-import type { ComplexArray } from '../simulate/solved.js';
+import type { ComplexArray } from '../run/solved.js';
 import { fourier } from './fourier.js';
 
 /**
