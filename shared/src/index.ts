@@ -7,6 +7,7 @@ export * from './documents/pair.rules.js';
 export * from './documents/parse.js';
 export * from './documents/result.js';
 export * from './documents/system.schema.js';
+export * from './dynamics/relaxation/relaxation-numbers.js';
 export * from './formats/csv.js';
 export * from './formats/jcamp-reader.js';
 export * from './formats/jcamp.js';
