@@ -20,6 +20,7 @@ export * from './nuclides/nuclides.js';
 export * from './planning/discrimination.js';
 export * from './planning/ernst-angle.js';
 export * from './planning/sensitivity.js';
+export * from './report/left-out.js';
 export * from './run/context.js';
 export * from './run/solved.js';
 export * from './simulate/cost.js';
