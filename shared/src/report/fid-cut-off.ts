@@ -23,7 +23,7 @@ export function fidCutOff(system: SpinSystem, experiment: Experiment): Approxima
     gaussian: processing.gaussian,
   };
   const duration = acquisition.points / acquisition.width;
-  const whole = endless(decay) ? 0 : lineWidth(decay, timeUntil(decay, GONE));
+  const whole = endless(decay) ? 0 : lineWidth(decay, Infinity);
   const cut = lineWidth(decay, duration);
   const left = envelope(decay, duration);
   return {
@@ -51,8 +51,9 @@ function timeUntil({ lorentzian, gaussian }: Decay, level: number): number {
   return a === 0 ? -c / b : (-b + Math.sqrt(b * b - 4 * a * c)) / (2 * a);
 }
 
-/** Full width at half height of the absorption of a decay that ends after `duration`, by bisection. */
-export function lineWidth(decay: Decay, duration: number): number {
+/** Full width at half height of the absorption of a decay that ends after `end` s, by bisection. */
+export function lineWidth(decay: Decay, end: number): number {
+  const duration = endless(decay) ? end : Math.min(end, timeUntil(decay, GONE));
   const height = absorption(decay, duration, 0);
   // From the resonance outwards in steps of a fraction of the narrowest possible line to the first point below half height.
   const step = 0.1 / duration;

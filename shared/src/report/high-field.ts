@@ -24,7 +24,8 @@ export function highFieldTruncation(system: SpinSystem, experiment: Experiment):
   const exact = fragments.every((fragment) => spinSpace(fragment).dimension <= limit);
   const estimate = estimateHighFieldTruncation(system, experiment);
   const hz = exact && estimate > 0 ? exactTruncation(fragments, experiment, orientations) : estimate;
-  const kept = oriented && experiment.quadrupoleOrder === 2 ? 'Quadrupolar levels are kept to second order. ' : '';
+  const secondOrder = experiment.quadrupoleOrder === 2 && system.nuclei.some(({ quadrupole }) => quadrupole);
+  const kept = oriented && secondOrder ? 'Quadrupolar levels are kept to second order. ' : '';
   const how = exact
     ? `the complete Hamiltonian in the laboratory frame moves a line by up to ${hertz(hz)} (second-order estimate ${hertz(estimate)})`
     : `second-order perturbation theory moves a line by up to ${hertz(hz)}`;
