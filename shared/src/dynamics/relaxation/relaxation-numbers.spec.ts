@@ -5,6 +5,7 @@ import { signedLarmorHz } from '../../interactions/carriers.js';
 import { dipolarConstantHz } from '../../interactions/tensors.js';
 import { nuclide } from '../../nuclides/nuclides.js';
 import { relaxationNumbers, relaxationTable } from './relaxation-numbers.js';
+import { scalarRelaxation } from './scalar-relaxation.js';
 
 const frame = { protonMHz: 400, observe: '1H', acquisition: { centre: 0, width: 1000, points: 16 } };
 const density = (tauC: number) => (w: number) => tauC / (1 + (w * tauC) ** 2);
@@ -122,6 +123,32 @@ describe('relaxationNumbers', () => {
       );
     }, 0);
     expectRatio(numbers[0].t1Selective, 1 / sum);
+  });
+});
+
+describe('scalar relaxation of the second kind', () => {
+  it('has the value of the formula where the flip term counts, and only the T1 term far from resonance', () => {
+    // A. Abragam, Principles of Nuclear Magnetism, 1961, ch. VIII, evaluated by hand for J = 100 Hz, S = 3/2, T1 = T2 = 2 us:
+    // 4 pi^2 J^2 S(S+1)/3 = 493480.22; w T2 = 2 pi 1e5 2e-6 = 1.256637, 2e-6/(1 + w^2 T2^2) = 7.754526e-7.
+    const { r1, r2 } = scalarRelaxation({ spin: 1.5, j: 100, t1: 2e-6, t2: 2e-6, frequencyDifference: 1e5 });
+    expect(r1).toBeCloseTo(0.765342, 5);
+    expect(r2).toBeCloseTo(1.369631, 5);
+  });
+
+  it('broadens a proton on 14N by (8 pi/3) J^2 T1', () => {
+    const system = systemOf({
+      nuclei: [
+        { id: 'N', isotope: '14N', shift: 0, quadrupole: { cq: 3e6 } },
+        { id: 'H', isotope: '1H', shift: 7 },
+      ],
+      couplings: [{ between: ['N', 'H'], j: 52 }],
+      tumbling: { tauC: 1e-11 },
+    });
+    const [n, h] = relaxationNumbers(system, frame);
+    expectRatio(h.scalarWidth.N, ((8 * Math.PI) / 3) * 52 ** 2 * n.t1!, 4);
+    // The proton itself is not relaxed by tumbling: it does not broaden nitrogen.
+    expect(n.scalarWidth).toEqual({});
+    expect(h.lineWidth).toBeNull();
   });
 });
 

@@ -1,9 +1,11 @@
 import { complexMatrix } from '../../algebra/dense.js';
 import { solveComplexInPlace } from '../../algebra/dense-solve.js';
 import type { SpinSystem } from '../../documents/system.schema.js';
-import { relativePolarisation, type Frame } from '../../interactions/carriers.js';
+import { relativePolarisation, signedLarmorHz, type Frame } from '../../interactions/carriers.js';
+import { couplingsOf } from '../../interactions/scalar.js';
 import { nuclide } from '../../nuclides/nuclides.js';
 import { crossCorrelatedRate, longitudinalRates, transverseRate } from './one-spin-rates.js';
+import { scalarRelaxation } from './scalar-relaxation.js';
 
 /** What tumbling does to one nucleus, from Redfield's Gamma. Times in s, widths in Hz; null where nothing relaxes it. */
 export interface NucleusRelaxation {
@@ -22,11 +24,13 @@ export interface NucleusRelaxation {
   readonly noeByIsotope: Readonly<Record<string, number>>;
   /** By dipolar partner of spin 1/2: difference of the widths of the multiplet's two halves, from dipole-shift cross-correlation. */
   readonly widthDifference: Readonly<Record<string, number>>;
+  /** By J-coupled partner that relaxes too fast to split this nucleus's lines: the width it gives them, not part of `lineWidth`. */
+  readonly scalarWidth: Readonly<Record<string, number>>;
 }
 
 /**
  * T1, T2, NOE and widths of every nucleus. Equations of Iz alone (I. Solomon, Phys. Rev. 99 (1955) 559): the multi-spin orders
- * that cross-correlation mixes in are left out here, as are widths from J to a fast relaxing nucleus; spectra have both.
+ * that cross-correlation mixes in are left out here; spectra have them.
  * Needs `tumbling`. Cheap at any number of nuclei: one-spin rates are sums over mechanisms of at most two spins.
  */
 export function relaxationNumbers(system: SpinSystem, frame: Frame): NucleusRelaxation[] {
@@ -35,8 +39,9 @@ export function relaxationNumbers(system: SpinSystem, frame: Frame): NucleusRela
   const isotopes = [...new Set(nuclei.map(({ isotope }) => isotope))];
   const saturatedOne = nuclei.map((_, row) => steadyState(system, rates, [row]));
   const saturatedAll = isotopes.map((isotope) => steadyState(system, rates, rowsOf(system, isotope)));
+  const transverseRates = nuclei.map((_, row) => transverseRate(system, frame, row));
   return nuclei.map((nucleus, row) => {
-    const transverse = transverseRate(system, frame, row);
+    const transverse = transverseRates[row];
     const together = rowsOf(system, nucleus.isotope).reduce(
       (sum, other) => sum + rates[row * nuclei.length + other],
       0,
@@ -52,6 +57,10 @@ export function relaxationNumbers(system: SpinSystem, frame: Frame): NucleusRela
         isotopes.flatMap((isotope, k) => (isotope === nucleus.isotope ? [] : [[isotope, saturatedAll[k][row]]])),
       ),
       widthDifference: widthDifferences(system, frame, row),
+      scalarWidth: scalarWidths(system, frame, row, (other) => ({
+        t1: 1 / rates[other * (nuclei.length + 1)],
+        t2: 1 / transverseRates[other],
+      })),
     };
   });
 }
@@ -117,4 +126,24 @@ function widthDifferences(system: SpinSystem, frame: Frame, row: number): Record
     differences[nuclei[partner].id] = (2 * Math.abs(crossCorrelatedRate(system, frame, row, partner))) / Math.PI;
   }
   return differences;
+}
+
+function scalarWidths(
+  system: SpinSystem,
+  frame: Frame,
+  row: number,
+  timesOf: (row: number) => { t1: number; t2: number },
+): Record<string, number> {
+  const { nuclei } = system;
+  const widths: Record<string, number> = {};
+  for (const { a, b, j, like } of couplingsOf(system, [])) {
+    if (like || (a !== row && b !== row)) continue;
+    const partner = nuclei[a + b - row];
+    const times = timesOf(a + b - row);
+    if (2 * Math.PI * Math.abs(j) * times.t1 >= 1) continue;
+    const frequencyDifference = signedLarmorHz(nuclei[row].isotope, frame) - signedLarmorHz(partner.isotope, frame);
+    const { r2 } = scalarRelaxation({ spin: nuclide(partner.isotope).spin, j, ...times, frequencyDifference });
+    widths[partner.id] = r2 / Math.PI;
+  }
+  return widths;
 }
