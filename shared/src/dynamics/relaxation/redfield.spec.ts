@@ -1,5 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { systemOf } from '../../../test/documents.js';
 import {
   addScaledInto,
   adjoint,
@@ -9,8 +10,7 @@ import {
   type ComplexMatrix,
 } from '../../algebra/dense.js';
 import { rotateTensor, rotationMatrix } from '../../algebra/rotation.js';
-import { parseSystem } from '../../documents/parse.js';
-import type { SpinSystem, SpinSystemInput } from '../../documents/system.schema.js';
+import type { SpinSystem } from '../../documents/system.schema.js';
 import { signedLarmorHz } from '../../interactions/carriers.js';
 import { dipolarConstantHz } from '../../interactions/tensors.js';
 import { nuclide } from '../../nuclides/nuclides.js';
@@ -20,10 +20,6 @@ import { redfieldMatrix } from './redfield-matrix.js';
 import { redfieldTerms } from './redfield.js';
 
 const frame = { protonMHz: 400, observe: '1H', acquisition: { centre: 0, width: 1000, points: 16 } };
-
-function systemOf(parts: Omit<SpinSystemInput, 'format' | 'name'>): SpinSystem {
-  return parseSystem({ format: 'heddle.spin-system/1', name: 'test', ...parts });
-}
 
 /** Gamma over all |r><c|, r slowest, as a dense row-major matrix. */
 function fullGamma(system: SpinSystem): { gamma: Float64Array; dimension: number } {

@@ -1,6 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { parseSystem } from '../../documents/parse.js';
-import type { SpinSystem, SpinSystemInput } from '../../documents/system.schema.js';
+import { systemOf } from '../../../test/documents.js';
 import { signedLarmorHz } from '../../interactions/carriers.js';
 import { dipolarConstantHz } from '../../interactions/tensors.js';
 import { nuclide } from '../../nuclides/nuclides.js';
@@ -10,10 +9,6 @@ import { scalarRelaxation } from './scalar-relaxation.js';
 const frame = { protonMHz: 400, observe: '1H', acquisition: { centre: 0, width: 1000, points: 16 } };
 const density = (tauC: number) => (w: number) => tauC / (1 + (w * tauC) ** 2);
 const omega = (isotope: string, protonMHz = 400) => 2 * Math.PI * signedLarmorHz(isotope, { ...frame, protonMHz });
-
-function systemOf(parts: Omit<SpinSystemInput, 'format' | 'name'>): SpinSystem {
-  return parseSystem({ format: 'heddle.spin-system/1', name: 'test', ...parts });
-}
 
 const expectRatio = (actual: number | null, expected: number, digits = 10) =>
   expect(actual! / expected).toBeCloseTo(1, digits);
