@@ -10,6 +10,20 @@ export function fourier(x: ComplexArray, sign: 1 | -1): ComplexArray {
   return isPowerOfTwo(n) ? powerOfTwo(x, sign) : chirp(x, sign);
 }
 
+/** The first `count` <= n/2 of X_j = sum_k x_k exp(2 pi i j k / n) of real numbers, n a power of two above 1. */
+export function fourierOfReal(x: Float64Array, count: number): ComplexArray {
+  const n = x.length;
+  const output = new Float64Array(2 * n);
+  planOf(n).realTransform(output, x);
+  const real = new Float64Array(count);
+  const imag = new Float64Array(count);
+  for (let j = 0; j < count; j++) {
+    real[j] = output[2 * j];
+    imag[j] = -output[2 * j + 1];
+  }
+  return { real, imag };
+}
+
 /** Whether n is 1, 2, 4, 8 ... */
 export function isPowerOfTwo(n: number): boolean {
   return n > 0 && (n & (n - 1)) === 0;

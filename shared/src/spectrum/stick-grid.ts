@@ -1,5 +1,5 @@
 import type { ComplexArray } from '../run/solved.js';
-import { fourier } from './fourier.js';
+import { fourierOfReal } from './fourier.js';
 
 /**
  * Sums sticks into a sampled FID without a pass over sticks x points:
@@ -54,7 +54,7 @@ export class StickGrid {
   /** Adds the FID of all sticks so far, each point times `decay(k)`, to `fid`. */
   addTo(fid: ComplexArray, decay: (k: number) => number = () => 1): void {
     if (!this.used) return;
-    const spread = fourier({ real: this.grid, imag: new Float64Array(this.size) }, 1);
+    const spread = fourierOfReal(this.grid, this.points);
     for (let k = 0; k < this.points; k++) {
       const factor = decay(k) / windowTransform(k / this.size);
       fid.real[k] += factor * spread.real[k];

@@ -1,6 +1,6 @@
 import type { Matrix3 } from '../../algebra/rotation.js';
 import type { Experiment } from '../../documents/experiment.schema.js';
-import type { SpinSystem } from '../../documents/system.schema.js';
+import type { ExchangeState, SpinSystem } from '../../documents/system.schema.js';
 import { offsetsOf, signedLarmorHz } from '../../interactions/carriers.js';
 import { couplingsOf, isDecoupled } from '../../interactions/scalar.js';
 import { dipolarCouplingsOf, quadrupolarTensorHz, shiftTensorHz } from '../../interactions/tensors.js';
@@ -37,14 +37,18 @@ export interface SpinCluster {
   readonly pairs: readonly OrientedPair[];
 }
 
-/** The independent clusters that hold observed spins, while `decoupled` isotopes are decoupled. Tensors are in the molecular frame. */
+/**
+ * The independent clusters that hold observed spins, in `state`, while `decoupled` isotopes are decoupled. Tensors are in the
+ * molecular frame.
+ */
 export function observedClusters(
   system: SpinSystem,
   experiment: Experiment,
   decoupled: readonly string[],
+  state?: ExchangeState,
 ): SpinCluster[] {
-  const spins = spinsOf(system, experiment);
-  const pairs = pairsOf(system, spins, decoupled);
+  const spins = spinsOf(system, experiment, state);
+  const pairs = pairsOf(system, spins, decoupled, state);
   const label = spins.map((_, index) => index);
   for (const { a, b } of pairs) {
     const [kept, gone] = [label[a], label[b]];
@@ -64,8 +68,8 @@ export function observedClusters(
   });
 }
 
-function spinsOf(system: SpinSystem, experiment: Experiment): OrientedSpin[] {
-  const offsets = offsetsOf(system, experiment);
+function spinsOf(system: SpinSystem, experiment: Experiment, state?: ExchangeState): OrientedSpin[] {
+  const offsets = offsetsOf(system, experiment, state);
   return system.nuclei.flatMap((nucleus, row) => {
     const { isotope, count } = nucleus;
     const spin: OrientedSpin = {
@@ -81,8 +85,13 @@ function spinsOf(system: SpinSystem, experiment: Experiment): OrientedSpin[] {
   });
 }
 
-function pairsOf(system: SpinSystem, spins: readonly OrientedSpin[], decoupled: readonly string[]): OrientedPair[] {
-  const scalar = couplingsOf(system, decoupled);
+function pairsOf(
+  system: SpinSystem,
+  spins: readonly OrientedSpin[],
+  decoupled: readonly string[],
+  state?: ExchangeState,
+): OrientedPair[] {
+  const scalar = couplingsOf(system, decoupled, state);
   const dipolar = dipolarCouplingsOf(system).filter(
     ({ a, b }) => !isDecoupled(system.nuclei[a].isotope, system.nuclei[b].isotope, decoupled),
   );
@@ -96,6 +105,11 @@ function pairsOf(system: SpinSystem, spins: readonly OrientedSpin[], decoupled: 
     }
   }
   return pairs;
+}
+
+/** The cluster's spins with the couplings that ideal decoupling of `decoupled` leaves. */
+export function decoupledCluster({ spins, pairs }: SpinCluster, decoupled: readonly string[]): SpinCluster {
+  return { spins, pairs: pairs.filter(({ a, b }) => !isDecoupled(spins[a].isotope, spins[b].isotope, decoupled)) };
 }
 
 /** Whether all terms of the cluster commute, so that product states stay product states: no two like spins are coupled. */

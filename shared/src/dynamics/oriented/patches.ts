@@ -7,19 +7,8 @@ import {
   type OctahedralGrid,
   type Patch,
 } from '../../orientations/octahedral-grid.js';
+import type { DirectionalSpectrum } from './directional-spectrum.js';
 import type { TrianglePattern } from './triangle-pattern.js';
-
-/** What is known of a sample along any field direction: transitions that vary continuously with it. */
-export interface DirectionalSpectrum {
-  readonly transitions: number;
-  /** Amplitudes of a transition: one for each class of line widths, or two (real and imaginary part) for each. */
-  readonly channels: number;
-  /**
-   * Writes what is seen along the unit vector `direction`: frequencies of transition t in Hz to frequency[t], amplitudes of
-   * channel c to amplitude[c * transitions + t].
-   */
-  evaluate(direction: Float64Array, frequency: Float64Array, amplitude: Float64Array): void;
-}
 
 /** The nodes of one row of a face, with all transitions. */
 interface NodeRow {
@@ -34,6 +23,7 @@ interface NodeRow {
  */
 export class PatchIntegrator {
   private readonly rows: NodeRow[];
+  private filled = { face: -1, band: -1 };
   private readonly fineWeight: number;
   private readonly coarseWeight: number;
   private readonly direction = new Float64Array(3);
@@ -57,7 +47,10 @@ export class PatchIntegrator {
   /** Adds the mean over the band to `fine`, and that of the smaller set to `coarse`: a pattern for each channel. */
   addBand(face: number, band: number, fine: readonly TrianglePattern[], coarse: readonly TrianglePattern[]): void {
     const first = BAND_ROWS * band;
-    this.rows.forEach((row, i) => this.fillRow(face, first + i, row));
+    const follows = this.filled.face === face && this.filled.band === band - 1;
+    this.filled = { face, band };
+    if (follows) this.rows.unshift(this.rows.pop()!);
+    for (let i = follows ? 1 : 0; i <= BAND_ROWS; i++) this.fillRow(face, first + i, this.rows[i]);
     forEachPatch(this.grid, first, 2, (patch) => this.addPatch(patch, first, this.fineWeight, fine));
     forEachPatch(this.grid, first, 4, (patch) => this.addPatch(patch, first, this.coarseWeight, coarse));
   }
@@ -149,8 +142,12 @@ function interpolateRow(i: number, cuts: number, row: { f: Float64Array; a: Floa
   for (let j = 0; j <= cuts - i; j++) {
     const v = j / cuts;
     const w = 1 - u - v;
-    const [n0, n1, n2] = [w * (2 * w - 1), u * (2 * u - 1), v * (2 * v - 1)];
-    const [n3, n4, n5] = [4 * u * v, 4 * v * w, 4 * u * w];
+    const n0 = w * (2 * w - 1);
+    const n1 = u * (2 * u - 1);
+    const n2 = v * (2 * v - 1);
+    const n3 = 4 * u * v;
+    const n4 = 4 * v * w;
+    const n5 = 4 * u * w;
     row.f[j] = blend(frequencies, n0, n1, n2, n3, n4, n5);
     row.a[j] = blend(amplitudes, n0, n1, n2, n3, n4, n5);
   }

@@ -1,5 +1,5 @@
 import type { ComplexArray } from '../../run/solved.js';
-import { fourier } from '../../spectrum/fourier.js';
+import { fourierOfReal } from '../../spectrum/fourier.js';
 import { StickGrid } from '../../spectrum/stick-grid.js';
 
 /**
@@ -21,6 +21,7 @@ export class TrianglePattern {
   private readonly waitingWeight = new Float64Array(WAITING);
   private waiting = 0;
   private weight = 0;
+  private outside = 0;
   private used = false;
 
   /** `points` samples, 1/width seconds apart. */
@@ -35,11 +36,17 @@ export class TrianglePattern {
     this.sticks = new StickGrid(points, width);
   }
 
+  /** Intensity so far whose frequency lies outside the spectral width and folds into it. */
+  get folded(): number {
+    return this.outside;
+  }
+
   /** Adds a triangle of total intensity `weight` with the frequencies a, b, c (Hz) at its corners. */
   add(a: number, b: number, c: number, weight: number): void {
     const low = Math.min(a, b, c);
     const high = Math.max(a, b, c);
     const cells = (high - low) * this.cellsPerHz;
+    if (Math.abs(a + b + c) > 1.5 * this.width) this.outside += Math.abs(weight);
     if (cells < NARROW) this.addNarrow(a, b, c, weight, cells);
     else
       this.addTent(low * this.cellsPerHz, (a + b + c - low - high) * this.cellsPerHz, high * this.cellsPerHz, weight);
@@ -47,6 +54,11 @@ export class TrianglePattern {
 
   /** Adds one line. */
   addStick(hz: number, weight: number): void {
+    if (Math.abs(hz) > this.width / 2) this.outside += Math.abs(weight);
+    this.wait(hz, weight);
+  }
+
+  private wait(hz: number, weight: number): void {
     this.waitingHz[this.waiting] = hz;
     this.waitingWeight[this.waiting++] = weight;
     if (this.waiting === WAITING) this.flush();
@@ -58,7 +70,7 @@ export class TrianglePattern {
     this.sticks.addTo(fid, decay);
     if (!this.used) return;
     fid.real[0] += decay(0) * this.weight;
-    const { real, imag } = fourier({ real: this.grid, imag: new Float64Array(this.size) }, 1);
+    const { real, imag } = fourierOfReal(this.grid, this.points);
     for (let k = 1; k < this.points; k++) {
       const half = (Math.PI * k) / this.size;
       const factor = -decay(k) / (4 * half * half * (Math.sin(half) / half) ** 6);
@@ -71,12 +83,12 @@ export class TrianglePattern {
   private addNarrow(a: number, b: number, c: number, weight: number, cells: number): void {
     const sixth = (a + b + c) / 6;
     if (cells < POINT_LIKE) {
-      this.addStick(2 * sixth, weight);
+      this.wait(2 * sixth, weight);
       return;
     }
-    this.addStick(sixth + a / 2, weight / 3);
-    this.addStick(sixth + b / 2, weight / 3);
-    this.addStick(sixth + c / 2, weight / 3);
+    this.wait(sixth + a / 2, weight / 3);
+    this.wait(sixth + b / 2, weight / 3);
+    this.wait(sixth + c / 2, weight / 3);
   }
 
   /** Corner frequencies in cells, ascending. */
@@ -84,7 +96,9 @@ export class TrianglePattern {
     // A middle corner that almost coincides with another is moved a little, and all three back, so that the mean stays.
     const inside = Math.min(Math.max(middle, low + GAP), high - GAP);
     const back = (inside - middle) / 3;
-    const [rise, fall, span] = [inside - low, high - inside, high - low];
+    const rise = inside - low;
+    const fall = high - inside;
+    const span = high - low;
     this.spread(low - back, (2 * weight) / (rise * span));
     this.spread(inside - back, (-2 * weight) / (rise * fall));
     this.spread(high - back, (2 * weight) / (fall * span));
@@ -97,8 +111,10 @@ export class TrianglePattern {
     const mask = this.size - 1;
     const cell = Math.floor(position);
     const t = position - cell;
-    const [t2, t3] = [t * t, t * t * t];
-    const [t4, t5] = [t2 * t2, t2 * t3];
+    const t2 = t * t;
+    const t3 = t2 * t;
+    const t4 = t2 * t2;
+    const t5 = t2 * t3;
     const scale = amount / 120;
     // `cell` may be far outside the grid: reduce before the integer mask.
     const first = ((cell - 2) % this.size) + this.size;
