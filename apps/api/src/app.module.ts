@@ -11,6 +11,12 @@ import { InvitationsModule } from './invitations/invitations.module.js';
 import { LabsModule } from './labs/labs.module.js';
 import { MailModule } from './mail/mail.module.js';
 import { MembersModule } from './members/members.module.js';
+import { DemoModule } from './demo/demo.module.js';
+import { EventsModule } from './events/events.module.js';
+import { NuclidesModule } from './nuclides/nuclides.module.js';
+import { RunsModule } from './runs/runs.module.js';
+import { SystemsModule } from './systems/systems.module.js';
+import { TodayModule } from './today/today.module.js';
 import { PolicyModule } from './policy/policy.module.js';
 
 @Module({
@@ -33,6 +39,12 @@ import { PolicyModule } from './policy/policy.module.js';
     LabsModule,
     MembersModule,
     InvitationsModule,
+    EventsModule,
+    NuclidesModule,
+    SystemsModule,
+    RunsModule,
+    TodayModule,
+    DemoModule,
     HealthModule,
   ],
 })

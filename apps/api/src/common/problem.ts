@@ -39,12 +39,15 @@ export const forbidden = (detail: string) => new Problem(HttpStatus.FORBIDDEN, '
 export const conflict = (detail: string, current: unknown, yours: unknown) =>
   new Problem(HttpStatus.CONFLICT, 'conflict', detail, { current, yours });
 
-/** Fields of a body that are refused. `prefix` is where the document stands in the body. */
-export function refusedFields(errors: readonly DocumentError[], prefix = ''): Problem {
-  const fields = errors.map(({ path, message }) => fieldProblem(joinPath(prefix, path), message));
+/** Fields that are refused, by their paths in the body, or in `document` where it is one of the three documents. */
+export function refusedFields(errors: readonly DocumentError[], document?: string): Problem {
+  const fields = errors.map(({ path, message }) => fieldProblem(path, message));
   const detail =
     fields.length === 1 ? `${fields[0].path}: ${fields[0].detail}` : `${fields.length} fields are refused.`;
-  return new Problem(HttpStatus.UNPROCESSABLE_ENTITY, 'invalid', detail, { errors: fields });
+  return new Problem(HttpStatus.UNPROCESSABLE_ENTITY, 'invalid', detail, {
+    ...(document && { document }),
+    errors: fields,
+  });
 }
 
 export function fieldProblem(path: string, detail: string): FieldProblem {
@@ -54,9 +57,4 @@ export function fieldProblem(path: string, detail: string): FieldProblem {
     .split('.')
     .join('/')}`;
   return { path, pointer: path === '' ? '#' : pointer, detail };
-}
-
-function joinPath(prefix: string, path: string): string {
-  if (prefix === '' || path === '') return prefix || path;
-  return path.startsWith('[') ? `${prefix}${path}` : `${prefix}.${path}`;
 }

@@ -7,14 +7,31 @@ import { User } from '../account/user.entity.js';
 import { Invitation } from '../invitations/invitation.entity.js';
 import { Lab } from '../labs/lab.entity.js';
 import { Membership } from '../members/membership.entity.js';
+import { ResultEntity } from '../results/result.entity.js';
+import { RunEntity } from '../runs/run.entity.js';
+import { RevisionEntity } from '../systems/revision.entity.js';
+import { SystemEntity } from '../systems/system.entity.js';
+import { Bench1764560100000 } from './migrations/1764560100000-bench.js';
 import { People1764560000000 } from './migrations/1764560000000-people.js';
 
 export function dataSourceOptions(url: string): DataSourceOptions {
   return {
     type: 'mariadb',
     url,
-    entities: [User, Lab, Membership, Session, PersonalToken, PasswordReset, Invitation],
-    migrations: [People1764560000000],
+    entities: [
+      User,
+      Lab,
+      Membership,
+      Session,
+      PersonalToken,
+      PasswordReset,
+      Invitation,
+      SystemEntity,
+      RevisionEntity,
+      RunEntity,
+      ResultEntity,
+    ],
+    migrations: [People1764560000000, Bench1764560100000],
     migrationsRun: true,
     synchronize: false,
     timezone: 'Z',
