@@ -95,7 +95,7 @@ export class PatchIntegrator {
       Math.abs(f[0] + f[2] - 2 * f[4]),
       Math.abs(f[0] + f[1] - 2 * f[5]),
     );
-    return Math.min(MOST_CUTS, Math.max(1, Math.ceil(Math.sqrt(bend / (2 * this.tolerance)))));
+    return Math.min(MOST_CUTS, Math.max(2, Math.ceil(Math.sqrt(bend / (2 * this.tolerance)))));
   }
 }
 

@@ -65,7 +65,7 @@ export function planOf(system: SpinSystem, experiment: Experiment): Plan {
 }
 
 /** Phase, in radians, that interpolation may add by the time the signal has decayed. */
-const TOLERATED_PHASE = 0.05;
+const TOLERATED_PHASE = 0.1;
 
 function toleranceOf({ acquisition }: Experiment, { lineWidths }: DecayClasses): number {
   const decayed = 2 / (Math.PI * Math.min(...lineWidths));

@@ -68,7 +68,7 @@ export function surfaceSpinningJob(
 }
 
 /** Centres that move by less than this many tolerances turn the signal by a radian at most: it stays smooth. */
-const STILL = 20;
+const STILL = 10;
 /** Sticks below this many nuclei are left out. */
 const NEGLIGIBLE = 1e-14;
 /** Directions in one unit of work. */
