@@ -17,4 +17,11 @@ describe('whatIsLeftOut', () => {
       expect(detail.length > 20 && title.length > 3).toBe(true);
     }
   });
+
+  it('takes the fields of a spectrometer in place of common ones', () => {
+    const limit = (nutation?: number) =>
+      whatIsLeftOut(protonPair(100, 10), experimentOf(), { nutation }).find(({ id }) => id === 'ideal-pulses')!
+        .warnAbove;
+    expect(limit(50e3)).toBe(2 * limit());
+  });
 });
