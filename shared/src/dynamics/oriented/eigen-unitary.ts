@@ -48,11 +48,19 @@ function cayley(u: ComplexMatrix, cut: number): ComplexMatrix | null {
     out.imag[p] = unit - re;
   }
   try {
-    return solveComplexInPlace(sum, out);
+    solveComplexInPlace(sum, out);
+    flushTiny(out.real);
+    flushTiny(out.imag);
+    return out;
   } catch (error) {
     if (error instanceof RangeError) return null;
     throw error;
   }
+}
+
+/** The Hermitian solver takes entries of ordinary size; these are far below rounding. */
+function flushTiny(entries: Float64Array): void {
+  for (let p = 0; p < entries.length; p++) if (Math.abs(entries[p]) < 1e-100) entries[p] = 0;
 }
 
 function norm(a: ComplexMatrix): number {
