@@ -3,15 +3,18 @@ import { requirePair } from '../documents/parse.js';
 import type { Result } from '../documents/result.js';
 import type { SpinSystem } from '../documents/system.schema.js';
 import { solveBlocks } from '../dynamics/blocks/solve-blocks.js';
+import { solveLiouville } from '../dynamics/liouville/solve-liouville.js';
+import { solveOriented } from '../dynamics/oriented/solve-oriented.js';
+import { whatIsLeftOut } from '../report/left-out.js';
 import { fidToSpectrum } from '../spectrum/transform.js';
-import { EngineError, SILENT, type RunContext } from '../run/context.js';
+import { SILENT, type RunContext } from '../run/context.js';
 import { methodFor, type Method } from './method.js';
 import type { Solved } from '../run/solved.js';
 import { ENGINE_VERSION } from './version.js';
 
 type Solver = (system: SpinSystem, experiment: Experiment, context: RunContext) => Solved;
 
-const SOLVERS: Partial<Record<Method, Solver>> = { blocks: solveBlocks };
+const SOLVERS: Record<Method, Solver> = { blocks: solveBlocks, liouville: solveLiouville, orientations: solveOriented };
 
 /**
  * Simulates one experiment on one spin system: the signal by the cheapest exact method, its spectrum and the report.
@@ -21,7 +24,6 @@ export function simulate(system: SpinSystem, experiment: Experiment, context: Ru
   requirePair(system, experiment);
   const started = Date.now();
   const solve = SOLVERS[methodFor(system, experiment)];
-  if (!solve) throw new EngineError('UNSUPPORTED', 'this kind of experiment is not computed yet', 'sequence');
   const solved = solve(system, experiment, context);
   return toResult(system, experiment, solved, (Date.now() - started) / 1000);
 }
@@ -36,6 +38,13 @@ export function toResult(system: SpinSystem, experiment: Experiment, solved: Sol
     spectrum: fidToSpectrum(fid, experiment),
     fid: { dwell: 1 / experiment.acquisition.width, real: fid.real, imag: fid.imag },
     ...(lines && { lines }),
-    report: { method, seconds, dimensions, approximations, warnings, engine: ENGINE_VERSION },
+    report: {
+      method,
+      seconds,
+      dimensions,
+      approximations: [...whatIsLeftOut(system, experiment), ...approximations],
+      warnings,
+      engine: ENGINE_VERSION,
+    },
   };
 }

@@ -11,9 +11,10 @@ import { expmDense } from '../../algebra/expm-dense.js';
 import type { Experiment, Step } from '../../documents/experiment.schema.js';
 import { relativePolarisation, senseOf } from '../../interactions/carriers.js';
 import { EngineError } from '../../run/context.js';
+import { scansOf, type Scan, type ScanStep } from '../../sequence/steps.js';
 import { eigenSmall, type CoupledSpins } from './coupled-spins.js';
 import type { OrientedSpin } from './oriented-spins.js';
-import { radians, scansOf, type Scan } from './preparation.js';
+import { radians, receiverPhase } from './preparation.js';
 
 type Pulse = Extract<Step, { pulse: unknown }>['pulse'];
 
@@ -25,6 +26,7 @@ export class DensityPreparation {
   private readonly scans: readonly Scan[];
   private readonly equilibrium: ComplexMatrix;
   private readonly pulses = new Map<Pulse, ComplexMatrix>();
+  private readonly settings = new Map<string, CoupledSpins>();
 
   /** `spinsWhile` gives the cluster under any setting of decoupling; all have the same spins. */
   constructor(
@@ -32,38 +34,41 @@ export class DensityPreparation {
     private readonly spinsWhile: (decoupled: readonly string[]) => CoupledSpins,
   ) {
     this.scans = scansOf(experiment);
-    const { spins, dimension } = this.coupled(experiment.decouple);
+    const coupled = this.coupled(experiment.decouple);
+    const { spins, dimension } = coupled;
+    const polarisations = spins.map(({ isotope }) => relativePolarisation(isotope, experiment.observe));
     this.equilibrium = complexMatrix(dimension, dimension);
     for (let s = 0; s < dimension; s++) {
-      spins.forEach(({ isotope }, k) => {
-        const polarisation = relativePolarisation(isotope, experiment.observe);
-        this.equilibrium.real[s * (dimension + 1)] += polarisation * this.coupled(experiment.decouple).projection(s, k);
+      polarisations.forEach((polarisation, k) => {
+        this.equilibrium.real[s * (dimension + 1)] += polarisation * coupled.projection(s, k);
       });
     }
   }
 
-  /** Mean over the scans of i exp(-i receiver) rho for a field along `direction`. */
+  /** Sum over the scans of weight i exp(-i receiver) rho for a field along `direction`. */
   prepare(direction: Float64Array): ComplexMatrix {
     const { dimension } = this.coupled(this.experiment.decouple);
     const sum = complexMatrix(dimension, dimension);
-    for (const { steps, receiver } of this.scans) {
+    for (const scan of this.scans) {
       let rho = this.equilibrium;
       let decoupled: readonly string[] = this.experiment.decouple;
-      for (const step of steps) {
+      for (const step of scan.steps) {
         if ('decouple' in step) decoupled = step.decouple;
-        else rho = this.after(step, rho, this.coupled(decoupled), direction);
+        else if (!('acquire' in step)) rho = this.after(step, rho, this.coupled(decoupled), direction);
       }
-      const turn = radians(90 - receiver);
-      addScaledInto(sum, turned(rho, turn), 1 / this.scans.length);
+      addScaledInto(sum, turned(rho, radians(90 - receiverPhase(scan))), scan.weight);
     }
     return sum;
   }
 
   private coupled(decoupled: readonly string[]): CoupledSpins {
-    return this.spinsWhile(decoupled);
+    const key = decoupled.join();
+    const coupled = this.settings.get(key) ?? this.spinsWhile(decoupled);
+    this.settings.set(key, coupled);
+    return coupled;
   }
 
-  private after(step: Step, rho: ComplexMatrix, coupled: CoupledSpins, direction: Float64Array): ComplexMatrix {
+  private after(step: ScanStep, rho: ComplexMatrix, coupled: CoupledSpins, direction: Float64Array): ComplexMatrix {
     if ('delay' in step) {
       coupled.turnTo(direction[0], direction[1], direction[2]);
       return sandwich(evolution(coupled, step.delay), rho);
@@ -78,7 +83,7 @@ export class DensityPreparation {
       coupled.turnTo(direction[0], direction[1], direction[2]);
       return sandwich(this.softPulse(step.pulse, step.pulse.seconds, coupled), rho);
     }
-    throw new EngineError('UNSUPPORTED', 'this step is not computed for oriented samples', 'sequence.steps');
+    throw new EngineError('UNSUPPORTED', 'saturation is not computed for oriented samples', 'sequence');
   }
 
   private idealPulse(pulse: Pulse, { spins }: CoupledSpins): ComplexMatrix {

@@ -1,45 +1,6 @@
-import type { Experiment, Step } from '../../documents/experiment.schema.js';
+import type { Experiment } from '../../documents/experiment.schema.js';
 import { relativePolarisation } from '../../interactions/carriers.js';
-import { EngineError } from '../../run/context.js';
-
-/** One pass through a sequence: what happens before the signal, with the phases of this pass. */
-export interface Scan {
-  readonly steps: readonly Step[];
-  /** degrees */
-  readonly receiver: number;
-}
-
-/** The scans of an experiment, each of weight 1/count. */
-export function scansOf({ sequence, observe }: Experiment): Scan[] {
-  const pulse = (flip: number, phase: number): Step => ({ pulse: { on: observe, flip, phase } });
-  if ('steps' in sequence) {
-    const { steps, phaseCycle } = sequence;
-    const last = steps[steps.length - 1];
-    const before = steps.slice(0, -1);
-    if (!phaseCycle) return [{ steps: before, receiver: 'acquire' in last ? last.acquire.phase : 0 }];
-    return phaseCycle.map((row) => {
-      let next = 0;
-      return {
-        steps: before.map((step) => ('pulse' in step ? { pulse: { ...step.pulse, phase: row[next++] } } : step)),
-        receiver: row[row.length - 1],
-      };
-    });
-  }
-  switch (sequence.recipe) {
-    case 'pulse-acquire':
-      return [{ steps: [pulse(sequence.flip, 0)], receiver: 0 }];
-    case 'quadrupole-echo': {
-      const delay: Step = { delay: sequence.tau };
-      return [{ steps: [pulse(90, 0), delay, pulse(90, 90), delay], receiver: 0 }];
-    }
-    default:
-      throw new EngineError(
-        'UNSUPPORTED',
-        `'${sequence.recipe}' is not computed for oriented samples`,
-        'sequence.recipe',
-      );
-  }
-}
+import { scansOf, type Scan, type ScanStep } from '../../sequence/steps.js';
 
 /** What the pulses leave when nothing else happens before the signal. */
 export interface PulsedState {
@@ -50,22 +11,30 @@ export interface PulsedState {
 
 /** The state after a sequence of ideal pulses; null where the sequence holds anything that depends on the Hamiltonian. */
 export function pulsedState(experiment: Experiment): PulsedState | null {
-  const { sequence, observe } = experiment;
-  if ('recipe' in sequence && sequence.recipe === 'cross-polarisation-ideal') {
-    return { real: relativePolarisation(sequence.from, observe), imag: 0 };
-  }
   const scans = scansOf(experiment);
-  const simple = (step: Step) => 'decouple' in step || ('pulse' in step && step.pulse.seconds === undefined);
-  if (!scans.every(({ steps }) => steps.every(simple))) return null;
+  if (!scans.every(({ steps }) => steps.every(isFree))) return null;
   let [real, imag] = [0, 0];
-  for (const { steps, receiver } of scans) {
-    const [x, y] = pulsed(steps, observe);
-    const [c, s] = [Math.cos(radians(receiver)), Math.sin(radians(receiver))];
+  for (const scan of scans) {
+    const [x, y] = magnetisation(scan, experiment.observe);
+    const receiver = radians(receiverPhase(scan));
+    const [c, s] = [Math.cos(receiver), Math.sin(receiver)];
     // i exp(-i receiver) (x + i y)
-    real += (x * s - y * c) / scans.length;
-    imag += (x * c + y * s) / scans.length;
+    real += scan.weight * (x * s - y * c);
+    imag += scan.weight * (x * c + y * s);
   }
   return { real, imag };
+}
+
+/** Whether a step does the same for every orientation and leaves magnetisation only. */
+function isFree(step: ScanStep): boolean {
+  if ('pulse' in step) return step.pulse.seconds === undefined;
+  return 'decouple' in step || 'polarise' in step || 'acquire' in step;
+}
+
+/** degrees */
+export function receiverPhase({ steps }: Scan): number {
+  const last = steps[steps.length - 1];
+  return 'acquire' in last ? last.acquire.phase : 0;
 }
 
 /** Isotopes decoupled at each stage of an experiment; the last setting holds during the signal. */
@@ -76,9 +45,10 @@ export function decouplingSettings(experiment: Experiment): (readonly string[])[
 }
 
 /** Magnetisation of the observed isotope after ideal pulses on it: each turns it about (cos phase, sin phase, 0). */
-function pulsed(steps: readonly Step[], observe: string): [x: number, y: number] {
+function magnetisation({ steps }: Scan, observe: string): [x: number, y: number] {
   let [x, y, z] = [0, 0, 1];
   for (const step of steps) {
+    if ('polarise' in step) [x, y, z] = [0, -relativePolarisation(step.polarise.from, observe), 0];
     if (!('pulse' in step) || step.pulse.on !== observe) continue;
     const [c, s] = [Math.cos(radians(step.pulse.flip)), Math.sin(radians(step.pulse.flip))];
     const [ax, ay] = [Math.cos(radians(step.pulse.phase)), Math.sin(radians(step.pulse.phase))];

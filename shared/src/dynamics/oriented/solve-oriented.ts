@@ -4,6 +4,7 @@ import type { RunContext } from '../../run/context.js';
 import type { ComplexArray, Solved } from '../../run/solved.js';
 import { orientationApproximation, spectralDistanceHz } from './convergence.js';
 import { runPart } from './job.js';
+import { orientedCost, refuseTooLarge } from './oriented-cost.js';
 import { planOf, type Plan } from './plan.js';
 import type { PulsedState } from './preparation.js';
 import { SignalSum } from './signal-sum.js';
@@ -15,13 +16,15 @@ export interface PartialSignal {
   readonly folded: number;
 }
 
-/** The most parts that a run is worth being cut into. */
+/** The most parts that a run is worth being cut into, and the shortest part worth the trouble, s. */
 const MOST_PARTS = 64;
+const SHORTEST_PART = 0.25;
 
-/** Into how many parts the run of an oriented sample may be cut. */
+/** Into how many parts the run of an oriented sample is worth being cut. */
 export function planParts(system: SpinSystem, experiment: Experiment): number {
-  const units = planOf(system, experiment).jobs.reduce((sum, job) => sum + job.units, 0);
-  return Math.min(MOST_PARTS, units);
+  if (experiment.sample.kind === 'crystal') return 1;
+  const { seconds } = orientedCost(system, experiment);
+  return Math.min(MOST_PARTS, Math.ceil(seconds / SHORTEST_PART));
 }
 
 /** Does one part of a run; the parts may be done anywhere and in any order. */
@@ -32,6 +35,7 @@ export function simulatePart(
   parts: number,
   context: RunContext,
 ): PartialSignal {
+  refuseTooLarge(system, experiment, context);
   return signalOf(planOf(system, experiment), experiment, part, parts, context);
 }
 
@@ -42,6 +46,7 @@ export function mergeParts(system: SpinSystem, experiment: Experiment, partials:
 
 /** Simulates a crystal, a static powder or a spinning powder. Throws EngineError UNSUPPORTED or TOO_LARGE. */
 export function solveOriented(system: SpinSystem, experiment: Experiment, context: RunContext): Solved {
+  refuseTooLarge(system, experiment, context);
   const plan = planOf(system, experiment);
   return solvedOf(plan, system, experiment, [signalOf(plan, experiment, 0, 1, context)]);
 }
