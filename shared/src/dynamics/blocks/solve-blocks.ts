@@ -5,9 +5,10 @@ import { offsetsOf } from '../../interactions/carriers.js';
 import { couplingsOf, type ScalarCoupling } from '../../interactions/scalar.js';
 import { larmorMHz, nuclide } from '../../nuclides/nuclides.js';
 import { EngineError, type RunContext } from '../../run/context.js';
+import { refuseBeyond } from '../../run/limits.js';
 import type { Solved } from '../../run/solved.js';
 import { StickGrid } from '../../spectrum/stick-grid.js';
-import { blocksCost, type BlocksCost } from './blocks-cost.js';
+import { blocksCost } from './blocks-cost.js';
 import { blockHamiltonian, type SectorCoupling } from './block-hamiltonian.js';
 import { observedParts, type ObservedPart } from './clusters.js';
 import { sectorSpins } from './sector-spins.js';
@@ -41,7 +42,7 @@ interface Collector {
  */
 export function solveBlocks(system: SpinSystem, experiment: Experiment, context: RunContext): Solved {
   const cost = blocksCost(system, experiment);
-  refuseBeyond(cost, context);
+  refuseBeyond(cost, context, `largest block ${cost.largestBlock}`);
   const { acquisition, observe } = experiment;
   const states: (ExchangeState | undefined)[] = system.states ?? [undefined];
   let solved = 0;
@@ -83,20 +84,6 @@ function flipAngle({ sequence }: Experiment): number {
     if ('pulse' in first) return (first.pulse.flip * Math.PI) / 180;
   }
   throw new EngineError('UNSUPPORTED', 'blocks need a single pulse before the signal', 'sequence');
-}
-
-function refuseBeyond(cost: BlocksCost, { limits }: RunContext): void {
-  if (!limits || (cost.bytes <= limits.bytes && cost.seconds <= limits.seconds)) return;
-  throw new EngineError(
-    'TOO_LARGE',
-    `this system needs about ${amount(cost.bytes / 2 ** 20)} MiB and ${amount(cost.seconds)} s (largest block ` +
-      `${cost.largestBlock}); the limits are ${amount(limits.bytes / 2 ** 20)} MiB and ${amount(limits.seconds)} s`,
-    'nuclei',
-  );
-}
-
-function amount(value: number): string {
-  return value >= 100 ? Math.round(value).toLocaleString('en') : value.toPrecision(2);
 }
 
 function collectorFor(system: SpinSystem, experiment: Experiment, tick: () => void): Collector {

@@ -2,10 +2,12 @@ import type { Experiment } from '../../documents/experiment.schema.js';
 import type { SpinSystem } from '../../documents/system.schema.js';
 import { nuclide } from '../../nuclides/nuclides.js';
 import type { RunContext } from '../../run/context.js';
+import { refuseBeyond } from '../../run/limits.js';
 import type { ComplexArray, Solved } from '../../run/solved.js';
 import { scansOf } from '../../sequence/steps.js';
 import { ensemblesOf, isClosed } from './ensemble.js';
 import { observedFragments } from './fragments.js';
+import { liouvilleCost } from './liouville-cost.js';
 import { ScanRunner, type DetectionClass } from './scan-runner.js';
 
 /**
@@ -15,6 +17,8 @@ import { ScanRunner, type DetectionClass } from './scan-runner.js';
  * Throws an EngineError TOO_LARGE when it would break the context's limits.
  */
 export function solveLiouville(system: SpinSystem, experiment: Experiment, context: RunContext): Solved {
+  const cost = liouvilleCost(system, experiment);
+  refuseBeyond(cost, context, `${cost.basis} basis states, ${cost.detected} detected coherences`);
   const { points } = experiment.acquisition;
   const scans = scansOf(experiment);
   const ensembles = observedFragments(system, experiment).flatMap((rows) => ensemblesOf(system, experiment, rows));

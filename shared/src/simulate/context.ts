@@ -1,1 +1,0 @@
-export * from '../run/context.js';
