@@ -7,6 +7,7 @@ import { larmorMHz, nuclide } from '../../nuclides/nuclides.js';
 import { EngineError, type RunContext } from '../../run/context.js';
 import { refuseBeyond } from '../../run/limits.js';
 import type { Solved } from '../../run/solved.js';
+import { foldingWarning } from '../../spectrum/folding-warning.js';
 import { StickGrid } from '../../spectrum/stick-grid.js';
 import { blocksCost } from './blocks-cost.js';
 import { blockHamiltonian, type SectorCoupling } from './block-hamiltonian.js';
@@ -198,11 +199,4 @@ function sum(matrices: readonly Float64Array[]): Float64Array {
   const out = matrices[0].slice();
   for (const matrix of matrices.slice(1)) for (let i = 0; i < out.length; i++) out[i] += matrix[i];
   return out;
-}
-
-function foldingWarning(folded: number, system: SpinSystem, { observe }: Experiment): string[] {
-  const nuclei = system.nuclei.reduce((total, { isotope, count }) => total + (isotope === observe ? count : 0), 0);
-  const share = folded / nuclei;
-  if (share < 1e-6) return [];
-  return [`${(100 * share).toPrecision(3)} % of the intensity lies outside the spectral width and folds into it`];
 }

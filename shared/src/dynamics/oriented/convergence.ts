@@ -39,3 +39,16 @@ export function orientationApproximation(hz: number, orientations: number, resol
     detail: `mean displacement of intensity between a set of ${orientations} orientations and one of about a quarter as many`,
   };
 }
+
+/** The account of the average over rotor phases, which is taken exactly whatever number of them was asked for. */
+export function rotorPhaseApproximation(gammas: number): Approximation {
+  return {
+    id: 'rotor-phases',
+    title: 'Sum over rotor phases',
+    made: false,
+    hz: 0,
+    computed: 'exact-difference',
+    warnAbove: 0,
+    detail: `the average over rotor phases was taken exactly, the limit that a sum over ${gammas} of them approaches`,
+  };
+}

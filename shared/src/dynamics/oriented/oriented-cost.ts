@@ -1,7 +1,8 @@
 import { innerProduct3, type Matrix3 } from '../../algebra/rotation.js';
 import type { Experiment } from '../../documents/experiment.schema.js';
 import type { SpinSystem } from '../../documents/system.schema.js';
-import { EngineError, type RunContext } from '../../run/context.js';
+import type { RunContext } from '../../run/context.js';
+import { refuseBeyond } from '../../run/limits.js';
 import { scansOf } from '../../sequence/steps.js';
 import { decayClasses } from './decay-classes.js';
 import { isCommuting, observedClusters, type SpinCluster } from './oriented-spins.js';
@@ -67,19 +68,15 @@ export function orientedCost(system: SpinSystem, experiment: Experiment): Orient
   return cost;
 }
 
-/** Throws TOO_LARGE with the estimate where it breaks the context's limits. */
-export function refuseTooLarge(system: SpinSystem, experiment: Experiment, { limits }: RunContext): void {
+/** Throws an EngineError TOO_LARGE with the estimate where it breaks the context's limits. */
+export function refuseTooLarge(system: SpinSystem, experiment: Experiment, context: RunContext): void {
   const cost = orientedCost(system, experiment);
-  if (!limits || (cost.bytes <= limits.bytes && cost.seconds <= limits.seconds)) return;
-  const amount = (value: number) => (value >= 100 ? Math.round(value).toLocaleString('en') : value.toPrecision(2));
-  throw new EngineError(
-    'TOO_LARGE',
-    `this sample needs about ${amount(cost.seconds)} s and ${amount(cost.bytes / 2 ** 20)} MiB (${cost.transitions} ` +
-      `transitions, ${cost.orientations} orientations, largest block ${cost.largestBlock}); ` +
-      `the limits are ${amount(limits.seconds)} s and ${amount(limits.bytes / 2 ** 20)} MiB`,
-    cost.largestBlock > 100 ? 'nuclei' : 'sample.orientations',
-  );
+  const why = `${cost.orientations} orientations, ${cost.transitions} transitions, largest block ${cost.largestBlock}`;
+  refuseBeyond(cost, context, why, cost.largestBlock > LARGE_BLOCK ? 'nuclei' : 'sample.orientations');
 }
+
+/** From this size of a block on it is the system rather than the number of orientations that makes a run long. */
+const LARGE_BLOCK = 100;
 
 interface Work {
   /** for one direction */

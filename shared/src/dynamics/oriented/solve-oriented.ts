@@ -1,8 +1,10 @@
 import type { Experiment } from '../../documents/experiment.schema.js';
+import type { Approximation } from '../../documents/result.js';
 import type { SpinSystem } from '../../documents/system.schema.js';
 import type { RunContext } from '../../run/context.js';
 import type { ComplexArray, Solved } from '../../run/solved.js';
-import { orientationApproximation, spectralDistanceHz } from './convergence.js';
+import { foldingWarning } from '../../spectrum/folding-warning.js';
+import { orientationApproximation, rotorPhaseApproximation, spectralDistanceHz } from './convergence.js';
 import { runPart } from './job.js';
 import { orientedCost, refuseTooLarge } from './oriented-cost.js';
 import { planOf, type Plan } from './plan.js';
@@ -62,13 +64,15 @@ function solvedOf(plan: Plan, system: SpinSystem, experiment: Experiment, partia
   const fine = total(partials.map((partial) => partial.fine));
   const orientations = Math.max(...plan.jobs.map((job) => job.orientations));
   const transitions = plan.jobs.reduce((sum, job) => sum + job.transitions, 0);
-  const approximations = [];
+  const approximations: Approximation[] = [];
   if (sample.kind !== 'crystal') {
     const coarse = total(partials.map((partial) => partial.coarse));
     const resolution = Math.max(acquisition.width / acquisition.points, ...plan.classes.lineWidths);
     const hz = spectralDistanceHz(fine, coarse, acquisition.width);
     approximations.push(orientationApproximation(hz, orientations, resolution));
   }
+  if (sample.kind === 'spinning' && sample.gammas !== undefined)
+    approximations.push(rotorPhaseApproximation(sample.gammas));
   const folded = partials.reduce((sum, partial) => sum + partial.folded, 0);
   return {
     fid: plan.pulsed ? scaled(fine, plan.pulsed) : fine,
@@ -106,11 +110,4 @@ function scaled({ real, imag }: ComplexArray, factor: PulsedState): ComplexArray
     real: real.map((value, k) => value * factor.real - imag[k] * factor.imag),
     imag: imag.map((value, k) => value * factor.real + real[k] * factor.imag),
   };
-}
-
-function foldingWarning(folded: number, system: SpinSystem, { observe }: Experiment): string[] {
-  const nuclei = system.nuclei.reduce((sum, { isotope, count }) => sum + (isotope === observe ? count : 0), 0);
-  const share = folded / nuclei;
-  if (share < 1e-6) return [];
-  return [`${(100 * share).toPrecision(3)} % of the intensity lies outside the spectral width and folds into it`];
 }
