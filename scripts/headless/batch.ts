@@ -63,10 +63,7 @@ async function serve(queue: BatchJob[], workers: number, finish: (reply: BatchRe
 }
 
 function startWorker(workers: number): Worker {
-  return new Worker(new URL('./batch.worker.ts', import.meta.url), {
-    execArgv: ['--import', 'tsx', '--conditions=heddle-src'],
-    workerData: { workers },
-  });
+  return new Worker(new URL('./batch.worker.mjs', import.meta.url), { workerData: { workers } });
 }
 
 function ask(worker: Worker, job: BatchJob): Promise<BatchReply & { lost?: boolean }> {

@@ -6,7 +6,7 @@ import { refusedFields } from './problem.js';
 
 /** Query of every list: how many, and where the last page ended. */
 export class PageQuery {
-  @ApiPropertyOptional({ default: 50, minimum: 1, maximum: 200 })
+  @ApiPropertyOptional({ type: Number, default: 50, minimum: 1, maximum: 200 })
   @IsOptional()
   @Type(() => Number)
   @IsInt()

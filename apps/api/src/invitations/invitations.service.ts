@@ -62,7 +62,7 @@ export class InvitationsService {
       to: email,
       subject: `${inviter.name} invites you to ${lab.name}`,
       paragraphs: [`${inviter.name} invites you to join ${lab.name} on Heddle as ${role}.`],
-      link: { text: 'Accept the invitation', url: `${this.settings.publicUrl}/invitation/${token}` },
+      link: { text: 'Accept the invitation', url: `${this.settings.publicUrl}/invitations/${token}` },
       closing: `The link works for ${DAYS} days.`,
     });
     return this.toDto(invitation);

@@ -23,7 +23,11 @@ export class RunQuery extends PageQuery {
   @IsUUID()
   owner?: string;
 
-  @ApiPropertyOptional({ default: '-created', description: 'created, finished or seconds; - before it is descending' })
+  @ApiPropertyOptional({
+    type: String,
+    default: '-created',
+    description: 'created, finished or seconds; - before it is descending',
+  })
   @IsOptional()
   @IsString()
   sort = '-created';

@@ -40,7 +40,11 @@ export class SystemQuery extends PageQuery {
   @IsBoolean({ message: 'must be true or false' })
   archived?: boolean;
 
-  @ApiPropertyOptional({ default: '-updated', description: 'name, updated or created; - before it is descending' })
+  @ApiPropertyOptional({
+    type: String,
+    default: '-updated',
+    description: 'name, updated or created; - before it is descending',
+  })
   @IsOptional()
   @IsString()
   sort = '-updated';

@@ -13,7 +13,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_sign_in'];
+    post: operations['AuthController_signIn'];
     delete?: never;
     options?: never;
     head?: never;
@@ -29,7 +29,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_refresh'];
+    post: operations['AuthController_refresh'];
     delete?: never;
     options?: never;
     head?: never;
@@ -45,7 +45,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_sign_out'];
+    post: operations['AuthController_signOut'];
     delete?: never;
     options?: never;
     head?: never;
@@ -61,7 +61,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_sign_out_everywhere'];
+    post: operations['AuthController_signOutEverywhere'];
     delete?: never;
     options?: never;
     head?: never;
@@ -75,7 +75,7 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_auth_session'];
+    get: operations['AuthController_session'];
     put?: never;
     post?: never;
     delete?: never;
@@ -93,7 +93,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_password_reset'];
+    post: operations['AuthController_requestReset'];
     delete?: never;
     options?: never;
     head?: never;
@@ -109,39 +109,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_auth_password_reset_confirm'];
-    delete?: never;
-    options?: never;
-    head?: never;
-    patch?: never;
-    trace?: never;
-  };
-  '/api/invitations/{token}': {
-    parameters: {
-      query?: never;
-      header?: never;
-      path?: never;
-      cookie?: never;
-    };
-    get: operations['get_invitations_token_'];
-    put?: never;
-    post?: never;
-    delete?: never;
-    options?: never;
-    head?: never;
-    patch?: never;
-    trace?: never;
-  };
-  '/api/invitations/{token}/accept': {
-    parameters: {
-      query?: never;
-      header?: never;
-      path?: never;
-      cookie?: never;
-    };
-    get?: never;
-    put?: never;
-    post: operations['post_invitations_token_accept'];
+    post: operations['AuthController_confirmReset'];
     delete?: never;
     options?: never;
     head?: never;
@@ -155,13 +123,13 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_account'];
+    get: operations['AccountController_read'];
     put?: never;
     post?: never;
     delete?: never;
     options?: never;
     head?: never;
-    patch: operations['patch_account'];
+    patch: operations['AccountController_rename'];
     trace?: never;
   };
   '/api/account/password': {
@@ -173,7 +141,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_account_password'];
+    post: operations['AccountController_changePassword'];
     delete?: never;
     options?: never;
     head?: never;
@@ -187,9 +155,9 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_account_tokens'];
+    get: operations['AccountController_listTokens'];
     put?: never;
-    post: operations['post_account_tokens'];
+    post: operations['AccountController_makeToken'];
     delete?: never;
     options?: never;
     head?: never;
@@ -206,7 +174,7 @@ export interface paths {
     get?: never;
     put?: never;
     post?: never;
-    delete: operations['delete_account_tokens_id_'];
+    delete: operations['AccountController_revokeToken'];
     options?: never;
     head?: never;
     patch?: never;
@@ -219,7 +187,7 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_account_sessions'];
+    get: operations['AccountController_listSessions'];
     put?: never;
     post?: never;
     delete?: never;
@@ -238,26 +206,10 @@ export interface paths {
     get?: never;
     put?: never;
     post?: never;
-    delete: operations['delete_account_sessions_id_'];
+    delete: operations['AccountController_endSession'];
     options?: never;
     head?: never;
     patch?: never;
-    trace?: never;
-  };
-  '/api/labs/{labId}': {
-    parameters: {
-      query?: never;
-      header?: never;
-      path?: never;
-      cookie?: never;
-    };
-    get: operations['get_labs_labId_'];
-    put?: never;
-    post?: never;
-    delete?: never;
-    options?: never;
-    head?: never;
-    patch: operations['patch_labs_labId_'];
     trace?: never;
   };
   '/api/labs/{labId}/members': {
@@ -267,7 +219,7 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_members'];
+    get: operations['MembersController_list'];
     put?: never;
     post?: never;
     delete?: never;
@@ -286,10 +238,26 @@ export interface paths {
     get?: never;
     put?: never;
     post?: never;
-    delete: operations['delete_labs_labId_members_memberId_'];
+    delete: operations['MembersController_remove'];
     options?: never;
     head?: never;
-    patch: operations['patch_labs_labId_members_memberId_'];
+    patch: operations['MembersController_changeRole'];
+    trace?: never;
+  };
+  '/api/labs/{labId}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['LabsController_read'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch: operations['LabsController_rename'];
     trace?: never;
   };
   '/api/labs/{labId}/invitations': {
@@ -299,9 +267,9 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_invitations'];
+    get: operations['LabInvitationsController_list'];
     put?: never;
-    post: operations['post_labs_labId_invitations'];
+    post: operations['LabInvitationsController_invite'];
     delete?: never;
     options?: never;
     head?: never;
@@ -318,20 +286,68 @@ export interface paths {
     get?: never;
     put?: never;
     post?: never;
-    delete: operations['delete_labs_labId_invitations_id_'];
+    delete: operations['LabInvitationsController_withdraw'];
     options?: never;
     head?: never;
     patch?: never;
     trace?: never;
   };
-  '/api/labs/{labId}/today': {
+  '/api/invitations/{token}': {
     parameters: {
       query?: never;
       header?: never;
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_today'];
+    get: operations['InvitationController_view'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/invitations/{token}/accept': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get?: never;
+    put?: never;
+    post: operations['InvitationController_accept'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/events': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['EventsController_stream'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/nuclides': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['NuclidesController_list'];
     put?: never;
     post?: never;
     delete?: never;
@@ -347,9 +363,9 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_systems'];
+    get: operations['SystemsController_list'];
     put?: never;
-    post: operations['post_labs_labId_systems'];
+    post: operations['SystemsController_create'];
     delete?: never;
     options?: never;
     head?: never;
@@ -363,13 +379,13 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_systems_id_'];
+    get: operations['SystemsController_read'];
     put?: never;
     post?: never;
-    delete: operations['delete_labs_labId_systems_id_'];
+    delete: operations['SystemsController_remove'];
     options?: never;
     head?: never;
-    patch: operations['patch_labs_labId_systems_id_'];
+    patch: operations['SystemsController_change'];
     trace?: never;
   };
   '/api/labs/{labId}/systems/{id}/duplicate': {
@@ -381,7 +397,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_labs_labId_systems_id_duplicate'];
+    post: operations['SystemsController_duplicate'];
     delete?: never;
     options?: never;
     head?: never;
@@ -395,9 +411,9 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_systems_id_revisions'];
+    get: operations['SystemsController_listRevisions'];
     put?: never;
-    post: operations['post_labs_labId_systems_id_revisions'];
+    post: operations['SystemsController_saveRevision'];
     delete?: never;
     options?: never;
     head?: never;
@@ -411,7 +427,7 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_systems_id_revisions_number_'];
+    get: operations['SystemsController_readRevision'];
     put?: never;
     post?: never;
     delete?: never;
@@ -427,9 +443,41 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_runs'];
+    get: operations['RunsController_list'];
     put?: never;
-    post: operations['post_labs_labId_runs'];
+    post: operations['RunsController_create'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/estimate': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get?: never;
+    put?: never;
+    post: operations['RunsController_estimate'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/workers': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['RunsController_workers'];
+    put?: never;
+    post?: never;
     delete?: never;
     options?: never;
     head?: never;
@@ -443,10 +491,10 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_runs_id_'];
+    get: operations['RunsController_read'];
     put?: never;
     post?: never;
-    delete: operations['delete_labs_labId_runs_id_'];
+    delete: operations['RunsController_remove'];
     options?: never;
     head?: never;
     patch?: never;
@@ -461,7 +509,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_labs_labId_runs_id_cancel'];
+    post: operations['RunsController_cancel'];
     delete?: never;
     options?: never;
     head?: never;
@@ -477,7 +525,7 @@ export interface paths {
     };
     get?: never;
     put?: never;
-    post: operations['post_labs_labId_runs_id_requeue'];
+    post: operations['RunsController_requeue'];
     delete?: never;
     options?: never;
     head?: never;
@@ -491,7 +539,7 @@ export interface paths {
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_runs_id_result'];
+    get: operations['RunsController_result'];
     put?: never;
     post?: never;
     delete?: never;
@@ -500,14 +548,78 @@ export interface paths {
     patch?: never;
     trace?: never;
   };
-  '/api/labs/{labId}/workers': {
+  '/api/labs/{labId}/runs/{id}/result.jdx': {
     parameters: {
       query?: never;
       header?: never;
       path?: never;
       cookie?: never;
     };
-    get: operations['get_labs_labId_workers'];
+    get: operations['RunsController_jcamp'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/runs/{id}/result.csv': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['RunsController_csv'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/runs/{id}/arrays': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['RunsController_arrays'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/today': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['TodayController_read'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/health': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['HealthController_check'];
     put?: never;
     post?: never;
     delete?: never;
@@ -520,51 +632,72 @@ export interface paths {
 export type webhooks = Record<string, never>;
 export interface components {
   schemas: {
-    Session: {
-      user: {
-        id: string;
-        name: string;
-        email: string;
-      };
-      memberships: {
-        labId: string;
-        labName: string;
-        /** @enum {string} */
-        role: 'chemist' | 'instructor' | 'leader' | 'admin';
-      }[];
+    SignInDto: {
+      email: string;
+      password: string;
     };
-    Account: {
+    SessionUserDto: {
       id: string;
       name: string;
       email: string;
+    };
+    SessionMembershipDto: {
+      labId: string;
+      labName: string;
+      /** @enum {string} */
+      role: 'chemist' | 'instructor' | 'leader' | 'admin';
+    };
+    SessionDto: {
+      user: components['schemas']['SessionUserDto'];
+      memberships: components['schemas']['SessionMembershipDto'][];
+    };
+    ResetRequestDto: {
+      email: string;
+    };
+    ResetConfirmDto: {
+      token: string;
+      password: string;
+    };
+    AccountDto: {
+      id: string;
+      name: string;
+      email: string;
+    };
+    AccountChangeDto: {
+      name: string;
+    };
+    PasswordChangeDto: {
+      current: string;
+      next: string;
     };
     TokenDto: {
       id: string;
       name: string;
       createdAt: string;
       lastUsedAt: string | null;
+      /** @description the token itself, told once, when it is made */
       secret?: string;
     };
-    SessionInfo: {
+    TokenPageDto: {
+      items: components['schemas']['TokenDto'][];
+      nextCursor: string | null;
+    };
+    NewTokenDto: {
+      name: string;
+    };
+    SessionInfoDto: {
       id: string;
       createdAt: string;
       lastUsedAt: string;
       userAgent: string;
+      /** @description the session that asks */
       current: boolean;
     };
-    InvitationView: {
-      labName: string;
-      email: string;
-      /** @enum {string} */
-      role: 'chemist' | 'instructor' | 'leader' | 'admin';
-      needsAccount: boolean;
+    SessionPageDto: {
+      items: components['schemas']['SessionInfoDto'][];
+      nextCursor: string | null;
     };
-    Lab: {
-      id: string;
-      name: string;
-      version: number;
-    };
-    Member: {
+    MemberDto: {
       id: string;
       userId: string;
       name: string;
@@ -573,7 +706,25 @@ export interface components {
       role: 'chemist' | 'instructor' | 'leader' | 'admin';
       joinedAt: string;
     };
-    Invitation: {
+    MemberPageDto: {
+      items: components['schemas']['MemberDto'][];
+      nextCursor: string | null;
+    };
+    RoleChangeDto: {
+      /** @enum {string} */
+      role: 'chemist' | 'instructor' | 'leader' | 'admin';
+    };
+    LabDto: {
+      id: string;
+      name: string;
+      /** @description grows with every change; a change says which version it was based on */
+      version: number;
+    };
+    LabChangeDto: {
+      name: string;
+      version: number;
+    };
+    InvitationDto: {
       id: string;
       email: string;
       /** @enum {string} */
@@ -582,14 +733,44 @@ export interface components {
       expiresAt: string;
       invitedBy: string;
     };
-    Person: {
+    InvitationPageDto: {
+      items: components['schemas']['InvitationDto'][];
+      nextCursor: string | null;
+    };
+    InviteDto: {
+      email: string;
+      /** @enum {string} */
+      role: 'chemist' | 'instructor' | 'leader' | 'admin';
+    };
+    InvitationViewDto: {
+      labName: string;
+      email: string;
+      /** @enum {string} */
+      role: 'chemist' | 'instructor' | 'leader' | 'admin';
+      /** @description whether the address has no account yet */
+      needsAccount: boolean;
+    };
+    AcceptDto: {
+      name?: string;
+      password?: string;
+    };
+    NuclideDto: {
+      /** @example 13C */
+      isotope: string;
+      spin: number;
+      /** @description frequency ratio to 1H of TMS in per cent (IUPAC 2001) */
+      xi: number;
+      /** @description magnetogyric ratio, rad/(s T) */
+      gamma: number;
+    };
+    PersonDto: {
       id: string;
       name: string;
     };
     SystemDto: {
       id: string;
       name: string;
-      owner: components['schemas']['Person'];
+      owner: components['schemas']['PersonDto'];
       shared: boolean;
       archived: boolean;
       latestRevision: number;
@@ -599,26 +780,25 @@ export interface components {
       updatedAt: string;
       version: number;
     };
-    RunDto: {
-      id: string;
-      /** @enum {string} */
-      state: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
-      progress: number;
-      system: components['schemas']['Person'];
-      revision: number;
-      experiment: {
+    SystemPageDto: {
+      items: components['schemas']['SystemDto'][];
+      nextCursor: string | null;
+    };
+    NewSystemDto: {
+      /** @description heddle.spin-system/1 */
+      document: {
         [key: string]: unknown;
       };
-      engine: string;
-      owner: components['schemas']['Person'];
-      createdAt: string;
-      startedAt: string | null;
-      finishedAt: string | null;
-      seconds: number | null;
-      method: string | null;
-      warnings: number;
-      error: string | null;
-      identical?: boolean;
+      note?: string;
+      /** @default false */
+      shared: boolean;
+    };
+    SystemChangeDto: {
+      version: number;
+      shared?: boolean;
+      archived?: boolean;
+      /** @description a member who becomes the owner */
+      ownerId?: string;
     };
     RevisionDto: {
       number: number;
@@ -626,19 +806,90 @@ export interface components {
         [key: string]: unknown;
       };
       note: string | null;
-      author: components['schemas']['Person'];
+      author: components['schemas']['PersonDto'];
       createdAt: string;
     };
-    Today: {
-      waiting: components['schemas']['RunDto'][];
-      running: components['schemas']['RunDto'][];
-      recent: components['schemas']['SystemDto'][];
+    RevisionPageDto: {
+      items: components['schemas']['RevisionDto'][];
+      nextCursor: string | null;
     };
-    Workers: {
+    NewRevisionDto: {
+      /** @description number of the revision that was changed */
+      basedOn: number;
+      /** @description heddle.spin-system/1 */
+      document: {
+        [key: string]: unknown;
+      };
+      note?: string;
+    };
+    RunDto: {
+      id: string;
+      /** @enum {string} */
+      state: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+      /** @description 0..1 */
+      progress: number;
+      system: components['schemas']['PersonDto'];
+      revision: number;
+      experiment: {
+        [key: string]: unknown;
+      };
+      engine: string;
+      owner: components['schemas']['PersonDto'];
+      createdAt: string;
+      startedAt: string | null;
+      finishedAt: string | null;
+      seconds: number | null;
+      method: string | null;
+      warnings: number;
+      error: string | null;
+      /** @description true when the same three had been run before and that run is offered */
+      identical?: boolean;
+    };
+    RunPageDto: {
+      items: components['schemas']['RunDto'][];
+      nextCursor: string | null;
+    };
+    NewRunDto: {
+      systemId: string;
+      revision: number;
+      /** @description heddle.experiment/1 */
+      experiment: {
+        [key: string]: unknown;
+      };
+    };
+    EstimateRequestDto: {
+      /** @description heddle.spin-system/1 */
+      system: {
+        [key: string]: unknown;
+      };
+      /** @description heddle.experiment/1 */
+      experiment: {
+        [key: string]: unknown;
+      };
+    };
+    EstimateDto: {
+      method: string;
+      seconds: number;
+      bytes: number;
+      dimensions: {
+        [key: string]: number;
+      };
+    };
+    WorkersDto: {
+      /** @description threads of this process */
       threads: number;
+      /** @description threads that are computing */
       busy: number;
       queued: number;
       running: number;
+    };
+    TodayDto: {
+      /** @description runs of mine that failed and wait for a decision */
+      waiting: components['schemas']['RunDto'][];
+      /** @description runs of the lab that are queued or running */
+      running: components['schemas']['RunDto'][];
+      /** @description systems touched last */
+      recent: components['schemas']['SystemDto'][];
     };
   };
   responses: never;
@@ -649,7 +900,7 @@ export interface components {
 }
 export type $defs = Record<string, never>;
 export interface operations {
-  post_auth_sign_in: {
+  AuthController_signIn: {
     parameters: {
       query?: never;
       header?: never;
@@ -658,10 +909,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          email: string;
-          password: string;
-        };
+        'application/json': components['schemas']['SignInDto'];
       };
     };
     responses: {
@@ -670,12 +918,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Session'];
+          'application/json': components['schemas']['SessionDto'];
         };
       };
     };
   };
-  post_auth_refresh: {
+  AuthController_refresh: {
     parameters: {
       query?: never;
       header?: never;
@@ -689,12 +937,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Session'];
+          'application/json': components['schemas']['SessionDto'];
         };
       };
     };
   };
-  post_auth_sign_out: {
+  AuthController_signOut: {
     parameters: {
       query?: never;
       header?: never;
@@ -711,7 +959,7 @@ export interface operations {
       };
     };
   };
-  post_auth_sign_out_everywhere: {
+  AuthController_signOutEverywhere: {
     parameters: {
       query?: never;
       header?: never;
@@ -728,7 +976,7 @@ export interface operations {
       };
     };
   };
-  get_auth_session: {
+  AuthController_session: {
     parameters: {
       query?: never;
       header?: never;
@@ -742,12 +990,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Session'];
+          'application/json': components['schemas']['SessionDto'];
         };
       };
     };
   };
-  post_auth_password_reset: {
+  AuthController_requestReset: {
     parameters: {
       query?: never;
       header?: never;
@@ -756,9 +1004,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          email: string;
-        };
+        'application/json': components['schemas']['ResetRequestDto'];
       };
     };
     responses: {
@@ -770,7 +1016,7 @@ export interface operations {
       };
     };
   };
-  post_auth_password_reset_confirm: {
+  AuthController_confirmReset: {
     parameters: {
       query?: never;
       header?: never;
@@ -779,10 +1025,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          token: string;
-          password: string;
-        };
+        'application/json': components['schemas']['ResetConfirmDto'];
       };
     };
     responses: {
@@ -794,56 +1037,7 @@ export interface operations {
       };
     };
   };
-  get_invitations_token_: {
-    parameters: {
-      query?: never;
-      header?: never;
-      path: {
-        token: string;
-      };
-      cookie?: never;
-    };
-    requestBody?: never;
-    responses: {
-      200: {
-        headers: {
-          [name: string]: unknown;
-        };
-        content: {
-          'application/json': components['schemas']['InvitationView'];
-        };
-      };
-    };
-  };
-  post_invitations_token_accept: {
-    parameters: {
-      query?: never;
-      header?: never;
-      path: {
-        token: string;
-      };
-      cookie?: never;
-    };
-    requestBody: {
-      content: {
-        'application/json': {
-          name?: string;
-          password?: string;
-        };
-      };
-    };
-    responses: {
-      200: {
-        headers: {
-          [name: string]: unknown;
-        };
-        content: {
-          'application/json': components['schemas']['Session'];
-        };
-      };
-    };
-  };
-  get_account: {
+  AccountController_read: {
     parameters: {
       query?: never;
       header?: never;
@@ -857,12 +1051,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Account'];
+          'application/json': components['schemas']['AccountDto'];
         };
       };
     };
   };
-  patch_account: {
+  AccountController_rename: {
     parameters: {
       query?: never;
       header?: never;
@@ -871,9 +1065,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          name: string;
-        };
+        'application/json': components['schemas']['AccountChangeDto'];
       };
     };
     responses: {
@@ -882,12 +1074,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Account'];
+          'application/json': components['schemas']['AccountDto'];
         };
       };
     };
   };
-  post_account_password: {
+  AccountController_changePassword: {
     parameters: {
       query?: never;
       header?: never;
@@ -896,10 +1088,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          current: string;
-          next: string;
-        };
+        'application/json': components['schemas']['PasswordChangeDto'];
       };
     };
     responses: {
@@ -911,7 +1100,7 @@ export interface operations {
       };
     };
   };
-  get_account_tokens: {
+  AccountController_listTokens: {
     parameters: {
       query?: never;
       header?: never;
@@ -925,15 +1114,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['TokenDto'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['TokenPageDto'];
         };
       };
     };
   };
-  post_account_tokens: {
+  AccountController_makeToken: {
     parameters: {
       query?: never;
       header?: never;
@@ -942,9 +1128,7 @@ export interface operations {
     };
     requestBody: {
       content: {
-        'application/json': {
-          name: string;
-        };
+        'application/json': components['schemas']['NewTokenDto'];
       };
     };
     responses: {
@@ -958,7 +1142,7 @@ export interface operations {
       };
     };
   };
-  delete_account_tokens_id_: {
+  AccountController_revokeToken: {
     parameters: {
       query?: never;
       header?: never;
@@ -977,7 +1161,7 @@ export interface operations {
       };
     };
   };
-  get_account_sessions: {
+  AccountController_listSessions: {
     parameters: {
       query?: never;
       header?: never;
@@ -991,15 +1175,12 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['SessionInfo'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['SessionPageDto'];
         };
       };
     };
   };
-  delete_account_sessions_id_: {
+  AccountController_endSession: {
     parameters: {
       query?: never;
       header?: never;
@@ -1018,12 +1199,12 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_: {
+  MembersController_list: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1034,70 +1215,18 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Lab'];
+          'application/json': components['schemas']['MemberPageDto'];
         };
       };
     };
   };
-  patch_labs_labId_: {
+  MembersController_remove: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
-      };
-      cookie?: never;
-    };
-    requestBody: {
-      content: {
-        'application/json': {
-          name: string;
-          version: number;
-        };
-      };
-    };
-    responses: {
-      200: {
-        headers: {
-          [name: string]: unknown;
-        };
-        content: {
-          'application/json': components['schemas']['Lab'];
-        };
-      };
-    };
-  };
-  get_labs_labId_members: {
-    parameters: {
-      query?: never;
-      header?: never;
-      path: {
-        labId: string;
-      };
-      cookie?: never;
-    };
-    requestBody?: never;
-    responses: {
-      200: {
-        headers: {
-          [name: string]: unknown;
-        };
-        content: {
-          'application/json': {
-            items: components['schemas']['Member'][];
-            nextCursor: string | null;
-          };
-        };
-      };
-    };
-  };
-  delete_labs_labId_members_memberId_: {
-    parameters: {
-      query?: never;
-      header?: never;
-      path: {
-        labId: string;
         memberId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1111,22 +1240,19 @@ export interface operations {
       };
     };
   };
-  patch_labs_labId_members_memberId_: {
+  MembersController_changeRole: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         memberId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          /** @enum {string} */
-          role: 'chemist' | 'instructor' | 'leader' | 'admin';
-        };
+        'application/json': components['schemas']['RoleChangeDto'];
       };
     };
     responses: {
@@ -1135,17 +1261,17 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Member'];
+          'application/json': components['schemas']['MemberDto'];
         };
       };
     };
   };
-  get_labs_labId_invitations: {
+  LabsController_read: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1156,30 +1282,69 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['Invitation'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['LabDto'];
         };
       };
     };
   };
-  post_labs_labId_invitations: {
+  LabsController_rename: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          email: string;
-          /** @enum {string} */
-          role: 'chemist' | 'instructor' | 'leader' | 'admin';
+        'application/json': components['schemas']['LabChangeDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
         };
+        content: {
+          'application/json': components['schemas']['LabDto'];
+        };
+      };
+    };
+  };
+  LabInvitationsController_list: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['InvitationPageDto'];
+        };
+      };
+    };
+  };
+  LabInvitationsController_invite: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['InviteDto'];
       };
     };
     responses: {
@@ -1188,18 +1353,18 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Invitation'];
+          'application/json': components['schemas']['InvitationDto'];
         };
       };
     };
   };
-  delete_labs_labId_invitations_id_: {
+  LabInvitationsController_withdraw: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1213,12 +1378,12 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_today: {
+  InvitationController_view: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        token: string;
       };
       cookie?: never;
     };
@@ -1229,26 +1394,93 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Today'];
+          'application/json': components['schemas']['InvitationViewDto'];
         };
       };
     };
   };
-  get_labs_labId_systems: {
+  InvitationController_accept: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        token: string;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['AcceptDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['SessionDto'];
+        };
+      };
+    };
+  };
+  EventsController_stream: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  NuclidesController_list: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['NuclideDto'][];
+        };
+      };
+    };
+  };
+  SystemsController_list: {
     parameters: {
       query?: {
+        limit?: number;
+        /** @description nextCursor of the page before */
+        cursor?: string;
+        /** @description part of the name */
         q?: string;
+        /** @description holds a nucleus of this isotope */
         nuclide?: string;
         owner?: string;
         shared?: boolean;
         archived?: boolean;
+        /** @description name, updated or created; - before it is descending */
         sort?: string;
-        limit?: number;
-        cursor?: string;
       };
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1259,32 +1491,23 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['SystemDto'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['SystemPageDto'];
         };
       };
     };
   };
-  post_labs_labId_systems: {
+  SystemsController_create: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          document: {
-            [key: string]: unknown;
-          };
-          note?: string;
-          shared?: boolean;
-        };
+        'application/json': components['schemas']['NewSystemDto'];
       };
     };
     responses: {
@@ -1298,13 +1521,13 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_systems_id_: {
+  SystemsController_read: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1320,13 +1543,13 @@ export interface operations {
       };
     };
   };
-  delete_labs_labId_systems_id_: {
+  SystemsController_remove: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1340,24 +1563,19 @@ export interface operations {
       };
     };
   };
-  patch_labs_labId_systems_id_: {
+  SystemsController_change: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          version: number;
-          shared?: boolean;
-          archived?: boolean;
-          ownerId?: string;
-        };
+        'application/json': components['schemas']['SystemChangeDto'];
       };
     };
     responses: {
@@ -1371,13 +1589,13 @@ export interface operations {
       };
     };
   };
-  post_labs_labId_systems_id_duplicate: {
+  SystemsController_duplicate: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1393,16 +1611,17 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_systems_id_revisions: {
+  SystemsController_listRevisions: {
     parameters: {
       query?: {
         limit?: number;
+        /** @description nextCursor of the page before */
         cursor?: string;
       };
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1413,33 +1632,24 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['RevisionDto'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['RevisionPageDto'];
         };
       };
     };
   };
-  post_labs_labId_systems_id_revisions: {
+  SystemsController_saveRevision: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          basedOn: number;
-          document: {
-            [key: string]: unknown;
-          };
-          note?: string;
-        };
+        'application/json': components['schemas']['NewRevisionDto'];
       };
     };
     responses: {
@@ -1453,14 +1663,14 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_systems_id_revisions_number_: {
+  SystemsController_readRevision: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
         number: number;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1476,19 +1686,22 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_runs: {
+  RunsController_list: {
     parameters: {
       query?: {
-        state?: string;
+        limit?: number;
+        /** @description nextCursor of the page before */
+        cursor?: string;
+        state?: 'queued' | 'running' | 'done' | 'failed' | 'cancelled';
+        /** @description id of a system */
         system?: string;
         owner?: string;
+        /** @description created, finished or seconds; - before it is descending */
         sort?: string;
-        limit?: number;
-        cursor?: string;
       };
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1499,32 +1712,23 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': {
-            items: components['schemas']['RunDto'][];
-            nextCursor: string | null;
-          };
+          'application/json': components['schemas']['RunPageDto'];
         };
       };
     };
   };
-  post_labs_labId_runs: {
+  RunsController_create: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody: {
       content: {
-        'application/json': {
-          systemId: string;
-          revision: number;
-          experiment: {
-            [key: string]: unknown;
-          };
-        };
+        'application/json': components['schemas']['NewRunDto'];
       };
     };
     responses: {
@@ -1538,13 +1742,59 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_runs_id_: {
+  RunsController_estimate: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['EstimateRequestDto'];
+      };
+    };
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['EstimateDto'];
+        };
+      };
+    };
+  };
+  RunsController_workers: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['WorkersDto'];
+        };
+      };
+    };
+  };
+  RunsController_read: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1560,13 +1810,13 @@ export interface operations {
       };
     };
   };
-  delete_labs_labId_runs_id_: {
+  RunsController_remove: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1580,13 +1830,13 @@ export interface operations {
       };
     };
   };
-  post_labs_labId_runs_id_cancel: {
+  RunsController_cancel: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1602,13 +1852,13 @@ export interface operations {
       };
     };
   };
-  post_labs_labId_runs_id_requeue: {
+  RunsController_requeue: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1624,18 +1874,19 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_runs_id_result: {
+  RunsController_result: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
         id: string;
+        labId: unknown;
       };
       cookie?: never;
     };
     requestBody?: never;
     responses: {
+      /** @description heddle.result/1 */
       200: {
         headers: {
           [name: string]: unknown;
@@ -1648,12 +1899,72 @@ export interface operations {
       };
     };
   };
-  get_labs_labId_workers: {
+  RunsController_jcamp: {
     parameters: {
       query?: never;
       header?: never;
       path: {
-        labId: string;
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  RunsController_csv: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  RunsController_arrays: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  TodayController_read: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
       };
       cookie?: never;
     };
@@ -1664,7 +1975,155 @@ export interface operations {
           [name: string]: unknown;
         };
         content: {
-          'application/json': components['schemas']['Workers'];
+          'application/json': components['schemas']['TodayDto'];
+        };
+      };
+    };
+  };
+  HealthController_check: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      /** @description The Health Check is successful */
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': {
+            /**
+             * @example ok
+             * @enum {string}
+             */
+            status?: 'ok' | 'degraded';
+            /**
+             * @example {
+             *       "database": {
+             *         "status": "up",
+             *         "responseTime": 12
+             *       }
+             *     }
+             */
+            info?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            } | null;
+            /** @example {} */
+            error?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            } | null;
+            /**
+             * @example {
+             *       "database": {
+             *         "status": "up",
+             *         "responseTime": 12
+             *       }
+             *     }
+             */
+            details?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            };
+          };
+        };
+      };
+      /** @description The Health Check is not successful */
+      503: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': {
+            /**
+             * @example error
+             * @enum {string}
+             */
+            status?: 'error' | 'shutting_down';
+            /**
+             * @example {
+             *       "database": {
+             *         "status": "up",
+             *         "responseTime": 12
+             *       }
+             *     }
+             */
+            info?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            } | null;
+            /**
+             * @example {
+             *       "redis": {
+             *         "status": "down",
+             *         "message": "Could not connect",
+             *         "responseTime": 3005
+             *       }
+             *     }
+             */
+            error?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            } | null;
+            /**
+             * @example {
+             *       "database": {
+             *         "status": "up",
+             *         "responseTime": 12
+             *       },
+             *       "redis": {
+             *         "status": "down",
+             *         "message": "Could not connect",
+             *         "responseTime": 3005
+             *       }
+             *     }
+             */
+            details?: {
+              [key: string]: {
+                /** @enum {string} */
+                status: 'up' | 'degraded' | 'down';
+                /** @description Time the health indicator took to respond, in ms */
+                responseTime?: number;
+              } & {
+                [key: string]: unknown;
+              };
+            };
+          };
         };
       };
     };

@@ -2,16 +2,16 @@ import type { components } from './schema';
 
 type Schemas = components['schemas'];
 
-export type Session = Schemas['Session'];
+export type Session = Schemas['SessionDto'];
 export type Membership = Session['memberships'][number];
 export type Role = Membership['role'];
 export type System = Schemas['SystemDto'];
 export type Run = Schemas['RunDto'];
 export type RunState = Run['state'];
-export type Member = Schemas['Member'];
-export type Invitation = Schemas['Invitation'];
+export type Member = Schemas['MemberDto'];
+export type Invitation = Schemas['InvitationDto'];
 export type Token = Schemas['TokenDto'];
-export type SignedInSession = Schemas['SessionInfo'];
+export type SignedInSession = Schemas['SessionInfoDto'];
 
 /** One page of a list; `nextCursor` fetches the next one. */
 export interface Page<T> {

@@ -22,7 +22,7 @@ export function CommandList() {
       yOffset="12vh"
       padding={0}
       size={560}
-      aria-label="Commands"
+      attributes={{ content: { 'aria-label': 'Commands' } }}
     >
       {commands && <Choices commands={commands} close={() => setCommands(null)} />}
     </Modal>

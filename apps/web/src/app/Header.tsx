@@ -148,7 +148,7 @@ function PersonMenu({ name, email }: { name: string; email: string }) {
           mb="xs"
           data={SCHEMES}
           value={colorScheme}
-          onChange={(value) => setColorScheme(value as MantineColorScheme)}
+          onChange={(value) => setColorScheme(value)}
         />
         <Menu.Divider />
         <Menu.Item onClick={signOut}>Sign out</Menu.Item>

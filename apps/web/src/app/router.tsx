@@ -5,6 +5,7 @@ import { NotFound } from './NotFound';
 import { PageFailure } from './PageFailure';
 import { RequireSession } from './RequireSession';
 import { Shell } from './Shell';
+import { ShellSkeleton } from './ShellSkeleton';
 
 /** Every address of the client. Pages are loaded when they are first opened. */
 export const routes: RouteObject[] = [
@@ -13,6 +14,7 @@ export const routes: RouteObject[] = [
     errorElement: <PageFailure />,
     children: [
       {
+        hydrateFallbackElement: <></>,
         lazy: async () => ({ Component: (await import('../features/auth/AuthLayout')).AuthLayout }),
         children: [
           {
@@ -32,6 +34,7 @@ export const routes: RouteObject[] = [
       },
       {
         element: <RequireSession />,
+        hydrateFallbackElement: <ShellSkeleton />,
         children: [
           { index: true, element: <Home /> },
           {

@@ -2,13 +2,10 @@ import { Alert } from '@mantine/core';
 
 /** Above a form: what was refused and belongs to no field of it. */
 export function FormRefusal({ message }: { message: string | null }) {
+  if (!message) return null;
   return (
-    <div role="alert">
-      {message && (
-        <Alert color="madder" variant="outline">
-          {message}
-        </Alert>
-      )}
-    </div>
+    <Alert color="madder" variant="outline" role="alert">
+      {message}
+    </Alert>
   );
 }

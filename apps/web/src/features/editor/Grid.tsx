@@ -27,6 +27,10 @@ export interface GridProps {
   blankOf?(row: Row, column: Column): string | undefined;
   /** What a cell shows in place of its text while it is not edited. */
   show?(text: string, column: Column): ReactNode;
+  /** What stands before the cells of a row. */
+  header?(row: Row): ReactNode;
+  /** Cells that can't be typed in. */
+  locked?(row: Row, column: Column): boolean;
   readOnly?: boolean;
   selected?: string | null;
   onSelect?(row: Row | null): void;
@@ -66,6 +70,8 @@ export function Grid(props: GridProps) {
   const here: Place = { row: Math.min(at.row, Math.max(count - 1, 0)), column: Math.min(at.column, width - 1) };
 
   const textAt = ({ row, column }: Place) => rows[row]?.cells[columns[column].field] ?? '';
+  const isLocked = ({ row, column }: Place) =>
+    rows[row] !== undefined && (props.locked?.(rows[row], columns[column]) ?? false);
   const arrive = (place: Place) => {
     setAt(place);
     onSelect?.(rows[place.row] ?? null);
@@ -78,7 +84,7 @@ export function Grid(props: GridProps) {
     );
   };
   const begin = (place: Place, text = textAt(place)) => {
-    if (readOnly) return;
+    if (readOnly || isLocked(place)) return;
     arrive(place);
     setEdit({ ...place, before: textAt(place), text });
     if (text !== textAt(place)) onEdit(rows[place.row] ?? null, columns[place.column], text);
@@ -98,7 +104,7 @@ export function Grid(props: GridProps) {
   const replace = (place: Place, text: string) => {
     const row = rows[place.row];
     const before = textAt(place);
-    if (!row || readOnly || text === before) return;
+    if (!row || readOnly || text === before || isLocked(place)) return;
     onEdit(row, columns[place.column], text);
     onCommit?.(row, columns[place.column], before, text);
   };
@@ -174,6 +180,7 @@ export function Grid(props: GridProps) {
       <table ref={table} className={classes.grid} role="grid" aria-label={label} aria-readonly={readOnly || undefined}>
         <thead>
           <tr>
+            {props.header && <td />}
             {columns.map((column) => (
               <th
                 key={column.field}
@@ -203,6 +210,7 @@ export function Grid(props: GridProps) {
                 className={row ? undefined : classes.open}
                 data-selected={(row && row.key === props.selected) || undefined}
               >
+                {props.header && <th scope="row">{row && props.header(row)}</th>}
                 {columns.map((column, columnIndex) => {
                   const place = { row: rowIndex, column: columnIndex };
                   const text = textAt(place);

@@ -48,7 +48,7 @@ export function MemberTable({ labId, members, manage }: Props) {
                 data={ROLES.map(({ value, label }) => ({ value, label }))}
                 allowDeselect={false}
                 value={member.role}
-                onChange={(role) => role && setRole(member, role as Role)}
+                onChange={(role) => role && setRole(member, role)}
               />
             ) : (
               ROLES.find(({ value }) => value === member.role)?.label

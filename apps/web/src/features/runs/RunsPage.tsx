@@ -36,7 +36,7 @@ export function RunsPage() {
           data={STATES}
           clearable
           value={filters.state ?? null}
-          onChange={(value) => set('state', value as RunState | null)}
+          onChange={(value) => set('state', value)}
           w={160}
         />
         <OwnerSelect value={filters.owner ?? null} onChange={(value) => set('owner', value)} />

@@ -54,7 +54,7 @@ export function TodayPage() {
 function Runs({ labId, label, runs, none }: { labId: string; label: string; runs: Run[] | undefined; none: string }) {
   if (!runs) return <Lines />;
   if (runs.length === 0) return <Text c="dimmed">{none}</Text>;
-  return <RunTable labId={labId} label={label} runs={runs} />;
+  return <RunTable labId={labId} label={label} runs={runs} brief />;
 }
 
 function Lines() {

@@ -97,7 +97,7 @@ describe('a draft', () => {
     ['half a position', { id: 'Q', isotope: '1H', shift: '1', 'position.0': '1' }, 'position.1', 'needs a value'],
     ['an id taken already', { id: 'A', isotope: '1H', shift: '1' }, 'id', /used by an earlier nucleus/],
   ])('shows %s at its cell', (_, cells, field, message) => {
-    const draft = addRow(abx(), 'nuclei', cells as Record<string, string>);
+    const draft = addRow(abx(), 'nuclei', cells);
     expect(checkDraft(draft).errors.cells.get(cellKey('nuclei', draft.nuclei[3].key, field))).toMatch(message);
   });
 

@@ -49,7 +49,7 @@ export class LatestWins<Request, Reply> {
     this.busySince = this.now();
     this.worker ??= this.createWorker();
     this.worker.onmessage = ({ data }) => {
-      this.onReply(data as Reply, request);
+      this.onReply(data, request);
       this.next();
     };
     this.worker.onerror = () => {
