@@ -1,8 +1,7 @@
 import { eigenSymmetric, type SymmetricEigen } from '../../algebra/eigen/symmetric.js';
-import type { Matrix3 } from '../../algebra/rotation.js';
-import type { OrientedPair, OrientedSpin, SpinCluster } from './oriented-spins.js';
+import { innerProduct3, multiply3, type Matrix3 } from '../../algebra/rotation.js';
+import { joined, type OrientedPair, type OrientedSpin, type SpinCluster } from './oriented-spins.js';
 import { quadratic, quadrupolarShift } from './surfaces.js';
-import { innerProduct3, multiply3 } from '../../algebra/rotation.js';
 
 /** Product states among which the Hamiltonian acts: each set of like, coupled spins keeps its total projection. */
 export interface Block {
@@ -113,6 +112,14 @@ export class CoupledSpins {
     for (const { place, pair, factor } of flips) out[place] += this.flipFlop[pair] * factor;
   }
 
+  /** `fillBlock` to a matrix of its own. */
+  blockMatrix(index: number): Float64Array {
+    const size = this.blocks[index].states.length;
+    const out = new Float64Array(size * size);
+    this.fillBlock(index, out);
+    return out;
+  }
+
   /** The pairs of blocks joined by In+ of the spins of `isotope`; `classOf` a row of the system, of `classes` line widths. */
   ladders(isotope: string, classOf: (row: number) => number, classes: number): Ladder[] {
     const home = this.homes();
@@ -154,14 +161,10 @@ export class CoupledSpins {
   }
 
   private findBlocks(): Block[] {
-    const label = this.spins.map((_, k) => k);
-    for (const { a, b, like } of this.pairs) {
-      if (!like) continue;
-      const [kept, gone] = [label[a], label[b]];
-      label.forEach((value, k) => {
-        if (value === gone) label[k] = kept;
-      });
-    }
+    const label = joined(
+      this.spins.length,
+      this.pairs.filter(({ like }) => like),
+    );
     const byKey = new Map<string, number[]>();
     for (let state = 0; state < this.dimension; state++) {
       const totals = this.spins.map(() => 0);

@@ -160,9 +160,7 @@ function evolution(coupled: CoupledSpins, seconds: number): ComplexMatrix {
   const out = complexMatrix(dimension, dimension);
   coupled.blocks.forEach(({ states }, block) => {
     const n = states.length;
-    const matrix = new Float64Array(n * n);
-    coupled.fillBlock(block, matrix);
-    const { values, vectors } = eigenSmall(matrix, n);
+    const { values, vectors } = eigenSmall(coupled.blockMatrix(block), n);
     for (let k = 0; k < n; k++) {
       const angle = -2 * Math.PI * values[k] * seconds;
       const [c, s] = [Math.cos(angle), Math.sin(angle)];
@@ -184,8 +182,7 @@ function fullHamiltonian(coupled: CoupledSpins): ComplexMatrix {
   const out = complexMatrix(dimension, dimension);
   coupled.blocks.forEach(({ states }, block) => {
     const n = states.length;
-    const matrix = new Float64Array(n * n);
-    coupled.fillBlock(block, matrix);
+    const matrix = coupled.blockMatrix(block);
     for (let i = 0; i < n; i++) {
       for (let j = 0; j <= i; j++) {
         out.real[states[i] * dimension + states[j]] = matrix[i * n + j];

@@ -5,7 +5,7 @@ import type { RunContext } from '../../run/context.js';
 import { refuseBeyond } from '../../run/limits.js';
 import { scansOf } from '../../sequence/steps.js';
 import { decayClasses } from './decay-classes.js';
-import { isCommuting, observedClusters, type SpinCluster } from './oriented-spins.js';
+import { isCommuting, joined, observedClusters, type SpinCluster } from './oriented-spins.js';
 import { decouplingSettings, pulsedState } from './preparation.js';
 import { highestOrder } from './sidebands.js';
 
@@ -136,11 +136,10 @@ interface BlockCounts {
 
 /** A block is a product over sets of coupled like spins of their states with one projection. */
 function blockCounts({ spins, pairs }: SpinCluster, observe: string): BlockCounts {
-  const label = spins.map((_, k) => k);
-  for (const { a, b, like } of pairs) {
-    const [kept, gone] = [label[a], label[b]];
-    if (like) label.forEach((value, k) => (label[k] = value === gone ? kept : value));
-  }
+  const label = joined(
+    spins.length,
+    pairs.filter(({ like }) => like),
+  );
   const sets = [...new Set(label)].map((name) => {
     const members = spins.filter((_, k) => label[k] === name);
     return { observed: members[0].isotope === observe, sizes: members.reduce(withSpin, [1]) };

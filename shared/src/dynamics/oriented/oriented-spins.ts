@@ -49,13 +49,7 @@ export function observedClusters(
 ): SpinCluster[] {
   const spins = spinsOf(system, experiment, state);
   const pairs = pairsOf(system, spins, decoupled, state);
-  const label = spins.map((_, index) => index);
-  for (const { a, b } of pairs) {
-    const [kept, gone] = [label[a], label[b]];
-    label.forEach((value, index) => {
-      if (value === gone) label[index] = kept;
-    });
-  }
+  const label = joined(spins.length, pairs);
   const observed = new Set(label.filter((_, index) => spins[index].isotope === experiment.observe));
   return [...observed].map((cluster) => {
     const members = spins.flatMap((_, index) => (label[index] === cluster ? [index] : []));
@@ -66,6 +60,16 @@ export function observedClusters(
         .map((pair) => ({ ...pair, a: members.indexOf(pair.a), b: members.indexOf(pair.b) })),
     };
   });
+}
+
+/** A label for each of 0..count-1, equal for those that pairs join, directly or through others. */
+export function joined(count: number, pairs: readonly { a: number; b: number }[]): number[] {
+  const label = Array.from({ length: count }, (_, index) => index);
+  for (const { a, b } of pairs) {
+    const [kept, gone] = [label[a], label[b]];
+    label.forEach((value, index) => (label[index] = value === gone ? kept : value));
+  }
+  return label;
 }
 
 function spinsOf(system: SpinSystem, experiment: Experiment, state?: ExchangeState): OrientedSpin[] {
