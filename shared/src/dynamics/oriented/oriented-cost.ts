@@ -105,7 +105,7 @@ function coupledCost(cluster: SpinCluster, counts: BlockCounts, experiment: Expe
   const bytes = 8 * terms + 200 * transitions + 16 * 12 * (pulsed ? 0 : dimension ** 2);
   if (sample.kind === 'spinning') {
     const range = frequencyRange(cluster) / sample.rateHz;
-    const steps = Math.max(32, 2 * highestOrder(range, 1), 12 * range);
+    const steps = Math.max(32, 2 * highestOrder(range, 1), 6 * range);
     const step = cubes * SECONDS.step + 2 * (terms * SECONDS.term + blocks * SECONDS.block);
     return { seconds: steps * (step + transitions * SECONDS.line), transitions, bytes: bytes + 48 * steps * squares };
   }

@@ -55,7 +55,7 @@ function rotorSteps(coupled: CoupledSpins, ladders: readonly Ladder[], rate: num
 }
 
 /** Steps for each turn of the fastest coherence in a period. Found by trial: the lines are then exact to about 1e-6. */
-const STEPS_PER_TURN = 8;
+const STEPS_PER_TURN = 4;
 /** Directions that are tried for the range of frequencies, and what is allowed for those between. */
 const TRIED = 64;
 const ALLOWANCE = 1.15;
