@@ -18,6 +18,6 @@ export const matchesPassword = (password: string, hashed = NOBODY) => compare(pa
 export const IsNewPassword = () =>
   applyDecorators(
     IsString({ message: 'must be text' }),
-    MinLength(10, { message: 'must have at least 10 characters' }),
+    MinLength(15, { message: 'must have at least 15 characters' }),
     MaxLength(MOST, { message: `must have at most ${MOST} characters` }),
   );

@@ -43,7 +43,7 @@ export class DemoService implements OnApplicationBootstrap {
   async onApplicationBootstrap(): Promise<void> {
     if (!this.settings.demo || (await this.dataSource.manager.count(User)) > 0) return;
     const lab = await this.labs.create(LAB);
-    const password = newSecret().slice(0, 14);
+    const password = newSecret().slice(0, 20);
     const contexts = {} as Record<Role, LabContext>;
     for (const role of ROLES) {
       const user = await this.account.create(PEOPLE[role], `${role}@saltmarsh.example`, password);

@@ -113,3 +113,24 @@ export const workersQuery = (labId: string) =>
     queryFn: () => unwrap(client.GET('/api/labs/{labId}/workers', { params: { path: { labId } } })),
     refetchInterval: 5_000,
   });
+
+export const revisionQuery = (labId: string, id: string, number: number) =>
+  queryOptions({
+    queryKey: [...keys.system(labId, id), 'revision', number],
+    queryFn: () =>
+      unwrap(
+        client.GET('/api/labs/{labId}/systems/{id}/revisions/{number}', { params: { path: { labId, id, number } } }),
+      ),
+    staleTime: Infinity,
+  });
+
+export const revisionsQuery = (labId: string, id: string) =>
+  queryOptions({
+    queryKey: [...keys.system(labId, id), 'revisions'],
+    queryFn: () =>
+      unwrap(
+        client.GET('/api/labs/{labId}/systems/{id}/revisions', {
+          params: { path: { labId, id }, query: { limit: 100 } },
+        }),
+      ),
+  });

@@ -791,7 +791,7 @@ export interface components {
       };
       note?: string;
       /** @default false */
-      shared: boolean;
+      shared?: boolean;
     };
     SystemChangeDto: {
       version: number;

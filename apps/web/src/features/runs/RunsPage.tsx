@@ -2,7 +2,6 @@ import { Button, Group, Select } from '@mantine/core';
 import { keepPreviousData, useInfiniteQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import { runsQuery, type RunFilters } from '../../api/queries';
-import type { RunState } from '../../api/types';
 import { EmptyState } from '../../components/EmptyState';
 import { OwnerSelect } from '../../components/OwnerSelect';
 import { PageHeader } from '../../components/PageHeader';

@@ -104,7 +104,8 @@ export function fromExperiment(experiment: ExperimentInput): ExperimentDraft {
   const put = (prefix: string, value: unknown): void => {
     if (typeof value === 'object' && value !== null) {
       for (const [key, inner] of Object.entries(value)) put(prefix === '' ? key : `${prefix}.${key}`, inner);
-    } else if (value !== undefined) cells[prefix] = typeof value === 'number' ? writeNumber(value) : String(value);
+    } else if (typeof value === 'number') cells[prefix] = writeNumber(value);
+    else if (typeof value === 'string' || typeof value === 'boolean') cells[prefix] = String(value);
   };
   put('', rest);
   if (sequence && 'steps' in sequence) {

@@ -1,8 +1,13 @@
 import type { Processing } from '@heddle/shared';
 import type { Range } from './axis';
+import type { TraceLayout } from './compare-traces';
 
-export type Panel = 'processing' | 'peaks' | 'integrals' | 'lines' | 'report' | 'documents';
-export const PANELS: readonly Panel[] = ['report', 'processing', 'peaks', 'integrals', 'lines', 'documents'];
+export type Panel = 'processing' | 'peaks' | 'integrals' | 'lines' | 'report' | 'compare' | 'documents';
+export const PANELS: readonly Panel[] = ['report', 'processing', 'peaks', 'integrals', 'lines', 'compare', 'documents'];
+
+const LAYOUTS: readonly TraceLayout[] = ['overlay', 'stack', 'difference'];
+/** Runs shown beside the first. */
+export const MOST_BESIDE = 9;
 
 /** What a reader has chosen to see of a run. It stands in the address, so that a link shows the same. */
 export interface ViewState {
@@ -19,6 +24,9 @@ export interface ViewState {
   readonly integrals: readonly Range[];
   /** The index of the region that integrals are normalised to, and the number of nuclei it is given. */
   readonly reference: { readonly index: number; readonly nuclei: number } | null;
+  /** Ids of other runs drawn with this one, and how. */
+  readonly beside: readonly string[];
+  readonly layout: TraceLayout;
 }
 
 export const START_VIEW: ViewState = {
@@ -30,6 +38,8 @@ export const START_VIEW: ViewState = {
   threshold: 0.05,
   integrals: [],
   reference: null,
+  beside: [],
+  layout: 'overlay',
 };
 
 const PROCESSING_KEYS = { lb: 'exponential', gb: 'gaussian', zf: 'zeroFill', p0: 'phase0', p1: 'phase1' } as const;
@@ -50,6 +60,8 @@ export function writeView(view: ViewState): URLSearchParams {
   if (view.threshold !== START_VIEW.threshold) params.set('peaks', short(view.threshold));
   if (view.integrals.length > 0) params.set('int', view.integrals.map(writeRange).join(','));
   if (view.reference) params.set('ref', `${view.reference.index}:${short(view.reference.nuclei)}`);
+  if (view.beside.length > 0) params.set('beside', view.beside.join(','));
+  if (view.layout !== 'overlay') params.set('as', view.layout);
   return params;
 }
 
@@ -78,6 +90,11 @@ export function readView(params: URLSearchParams): ViewState {
     threshold: number('peaks', (v) => v > 0 && v < 1) ?? START_VIEW.threshold,
     integrals,
     reference: integrals[index] && nuclei > 0 ? { index, nuclei } : null,
+    beside: (params.get('beside') ?? '')
+      .split(',')
+      .filter((id) => /^[0-9a-f-]{36}$/.test(id))
+      .slice(0, MOST_BESIDE),
+    layout: LAYOUTS.find((layout) => layout === params.get('as')) ?? 'overlay',
   };
 }
 

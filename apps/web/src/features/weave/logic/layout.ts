@@ -63,7 +63,7 @@ export interface LayoutOptions {
 }
 
 export const WEAVE = {
-  marginX: 28,
+  marginX: 16,
   arcArea: 58,
   labelRow: 15,
   threadHeight: 46,
