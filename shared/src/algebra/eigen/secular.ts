@@ -8,6 +8,8 @@
 const UNIT_ROUNDOFF = Number.EPSILON / 2;
 /** Five to six steps are usual; found by trial on random and clustered poles. */
 const MAX_STEPS = 200;
+/** From here on steps that do not halve the bracket are replaced by bisection: interpolation can go to and fro for ever. */
+const PATIENT_STEPS = 12;
 
 export class SecularEquation {
   private value = 0;
@@ -46,6 +48,7 @@ export class SecularEquation {
     let shift = last ? this.guessLast(left, gap, middle) : this.guessInner(left, gap, nearLeft);
     if (!(shift > low && shift < high)) shift = (low + high) / 2;
     let fixedWeight = false;
+    let width = high - low;
 
     for (let steps = 0; ; steps++) {
       if (steps === MAX_STEPS) throw new RangeError('The secular equation did not converge');
@@ -56,7 +59,9 @@ export class SecularEquation {
       else high = shift;
       if (steps > 0 && Math.abs(this.value) > before / 10) fixedWeight = !fixedWeight;
       let next = shift + this.step(origin, left, shift, fixedWeight, last);
-      if (!(next > low && next < high)) next = (low + high) / 2;
+      const slow = steps >= PATIENT_STEPS && high - low > width / 2;
+      width = high - low;
+      if (slow || !(next > low && next < high)) next = (low + high) / 2;
       if (next === shift || next === low || next === high) break;
       shift = next;
     }

@@ -1,0 +1,47 @@
+import { describe, expect, it } from 'vitest';
+import { SecularEquation } from './secular.js';
+
+/** An equation met in a dipolar Hamiltonian of seven protons, on which interpolation goes to and fro without end. */
+// prettier-ignore
+const POLES = Float64Array.from([
+  -1.3874151722815546, -0.90576814486218005, -0.85949072035406082, -0.72095479057243372, -0.6033750026953848,
+  -0.58197702461192513, -0.49784138801988531, -0.41833989125407545, -0.29469927960293746, -0.24144319447714388,
+  -0.21928097424825668, -0.086326789623760503, -0.072001732961617243, -0.040631169849680793, -0.0068528272646204069,
+  0.019384910414693049, 0.07578746547331669, 0.14585274014448626, 0.23021393918970692, 0.28462267280417713,
+  0.30141649242638935, 0.50985580596600011, 0.52771732871350374, 0.61252665947428209, 0.68893253246977826,
+  0.74442228713292569, 0.75379347493967019, 0.84366841243319601, 0.90919469894557225, 0.97411896631972072,
+  1.0809944265852565, 1.1097021682475208, 1.3953656989802703, 1.4202837514733875, 1.6574480676213295,
+]);
+// prettier-ignore
+const SQUARES = Float64Array.from([
+  3.3945710459677106e-05, 7.2978684903802101e-07, 0.21168766463051741, 0.22602078828695424, 0.024910035660308524,
+  9.6581100322058179e-06, 0.072664667820065462, 0.037073636023522399, 0.15066495912017427, 0.0057604573221589515,
+  0.030146196737033702, 0.00043957204883325276, 0.00049724229440464591, 0.021248664737454164, 0.0084168061431579861,
+  0.0017054208527492712, 0.058778035181470914, 0.012912406083497526, 0.00028875661402869653, 0.00032088606251572111,
+  0.00035139002535095032, 0.0026024391456262266, 0.045753661061163478, 0.067961154402735091, 0.010582352111708132,
+  0.00013166581543448263, 0.0022731735139792145, 3.4261589713107076e-06, 0.00038004139089441982,
+  0.0018326839231265542, 0.00039003761173224952, 1.3307603005449723e-06, 0.0041444484919274122,
+  1.1665580107300839e-05, 7.8075454562687852e-10,
+]);
+const RHO = 0.84217724111323777;
+
+describe('SecularEquation', () => {
+  it('finds every root, one in each gap, also where interpolation alone does not converge', () => {
+    const equation = new SecularEquation(POLES, SQUARES, POLES.length, RHO);
+    const distances = new Float64Array(POLES.length);
+    let trace = 0;
+    POLES.forEach((pole, index) => {
+      const root = equation.root(index, distances, 0);
+      expect(root).toBeGreaterThan(pole);
+      expect(root).toBeLessThan(POLES[index + 1] ?? pole + RHO);
+      const value = SQUARES.reduce((sum, square, j) => sum + square / distances[j], 1 / RHO);
+      const slope = SQUARES.reduce((sum, square, j) => sum + square / distances[j] ** 2, 0);
+      // A rounding error of the root moves the value by its slope.
+      expect(Math.abs(value)).toBeLessThan(1e-12 + 1e-15 * slope);
+      trace += root;
+    });
+    // The trace of diag(d) + rho z z^T.
+    const expected = POLES.reduce((sum, pole, j) => sum + pole + RHO * SQUARES[j], 0);
+    expect(trace).toBeCloseTo(expected, 12);
+  });
+});
