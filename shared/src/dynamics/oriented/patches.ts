@@ -24,8 +24,8 @@ interface NodeRow {
 export class PatchIntegrator {
   private readonly rows: NodeRow[];
   private filled = { face: -1, band: -1 };
-  private readonly fineWeight: number;
-  private readonly coarseWeight: number;
+  private readonly fine: PatchSize;
+  private readonly coarse: PatchSize;
   private readonly direction = new Float64Array(3);
 
   constructor(
@@ -40,8 +40,8 @@ export class PatchIntegrator {
       amplitude: Array.from({ length: longest }, () => new Float64Array(channels * transitions)),
       solidAngle: new Float64Array(longest),
     }));
-    this.fineWeight = patchWeight(grid, 2);
-    this.coarseWeight = patchWeight(grid, 4);
+    this.fine = patchSize(grid, 2);
+    this.coarse = patchSize(grid, 4);
   }
 
   /** Adds the mean over the band to `fine`, and that of the smaller set to `coarse`: a pattern for each channel. */
@@ -51,8 +51,8 @@ export class PatchIntegrator {
     this.filled = { face, band };
     if (follows) this.rows.unshift(this.rows.pop()!);
     for (let i = follows ? 1 : 0; i <= BAND_ROWS; i++) this.fillRow(face, first + i, this.rows[i]);
-    forEachPatch(this.grid, first, 2, (patch) => this.addPatch(patch, first, this.fineWeight, fine));
-    forEachPatch(this.grid, first, 4, (patch) => this.addPatch(patch, first, this.coarseWeight, coarse));
+    forEachPatch(this.grid, first, 2, (patch) => this.addPatch(patch, first, this.fine, fine));
+    forEachPatch(this.grid, first, 4, (patch) => this.addPatch(patch, first, this.coarse, coarse));
   }
 
   private fillRow(face: number, i: number, row: NodeRow): void {
@@ -63,8 +63,9 @@ export class PatchIntegrator {
     }
   }
 
-  private addPatch(patch: Patch, first: number, weight: number, patterns: readonly TrianglePattern[]): void {
+  private addPatch(patch: Patch, first: number, size: PatchSize, patterns: readonly TrianglePattern[]): void {
     const { transitions, channels } = this.spectrum;
+    const { weight } = size;
     for (let t = 0; t < transitions; t++) {
       let cut = 0;
       for (let c = 0; c < channels; c++) {
@@ -81,7 +82,7 @@ export class PatchIntegrator {
           for (let p = 0; p < 6; p++) {
             frequencies[p] = this.rows[patch[2 * p] - first].frequency[patch[2 * p + 1]][t];
           }
-          cut = this.cutsOf(frequencies);
+          cut = this.cutsOf(frequencies, size.mostCuts);
         }
         addTriangles(cut, patterns[c]);
       }
@@ -89,17 +90,31 @@ export class PatchIntegrator {
   }
 
   /** Triangles along a side: a chord of a parabola of second difference d leaves it by d/(2 cuts^2). */
-  private cutsOf(f: Float64Array): number {
+  private cutsOf(f: Float64Array, most: number): number {
     const bend = Math.max(
       Math.abs(f[1] + f[2] - 2 * f[3]),
       Math.abs(f[0] + f[2] - 2 * f[4]),
       Math.abs(f[0] + f[1] - 2 * f[5]),
     );
-    return Math.min(MOST_CUTS, Math.max(2, Math.ceil(Math.sqrt(bend / (2 * this.tolerance)))));
+    return Math.min(most, Math.max(2, Math.ceil(Math.sqrt(bend / (2 * this.tolerance)))));
   }
 }
 
-/** Beyond this the quadratic interpolation is the larger error. */
+/** What patches of one size have in common. */
+interface PatchSize {
+  readonly weight: number;
+  readonly mostCuts: number;
+}
+
+/**
+ * Over a side of size/n quarter turns, bent by d, the cubic term of a rank-2 harmonic, which the quadratic function leaves out, is
+ * some 0.1 d size/n. Cuts beyond those that bring the chords' d/(2 cuts^2) near that are of no use; the factor was found by trial.
+ */
+function patchSize(grid: OctahedralGrid, size: 2 | 4): PatchSize {
+  const useful = Math.ceil(Math.sqrt((2 * grid.n) / size));
+  return { weight: patchWeight(grid, size), mostCuts: Math.min(MOST_CUTS, useful) };
+}
+
 const MOST_CUTS = 16;
 /** Amplitudes below this share of a nucleus are left out. */
 const NEGLIGIBLE = 1e-12;
