@@ -197,25 +197,26 @@ function applyExponential(n: number, real: Float64Array, imag: Float64Array, fro
     imag[from + size + p] = term[1][p] = imag[from + p];
   }
   for (let order = 1; order <= MOST_TERMS; order++) {
-    let largest = 0;
     const [re0, im0] = term;
     const [re1, im1] = next;
-    for (let i = 0; i < n; i++) {
-      for (let j = 0; j < n; j++) {
-        let re = 0;
-        let im = 0;
-        for (let l = 0, p = i * n, q = j; l < n; l++, p++, q += n) {
-          re += S[p] * im0[q] + K[p] * re0[q];
-          im += K[p] * im0[q] - S[p] * re0[q];
+    re1.fill(0, 0, size);
+    im1.fill(0, 0, size);
+    for (let i = 0, p = 0; i < n; i++) {
+      for (let l = 0; l < n; l++, p++) {
+        const s = S[p] / order;
+        const k = K[p] / order;
+        if (s === 0 && k === 0) continue;
+        for (let q = i * n, r = l * n; r < (l + 1) * n; q++, r++) {
+          re1[q] += s * im0[r] + k * re0[r];
+          im1[q] += k * im0[r] - s * re0[r];
         }
-        re /= order;
-        im /= order;
-        re1[i * n + j] = re;
-        im1[i * n + j] = im;
-        real[from + size + i * n + j] += re;
-        imag[from + size + i * n + j] += im;
-        largest = Math.max(largest, Math.abs(re), Math.abs(im));
       }
+    }
+    let largest = 0;
+    for (let p = 0; p < size; p++) {
+      real[from + size + p] += re1[p];
+      imag[from + size + p] += im1[p];
+      largest = Math.max(largest, Math.abs(re1[p]), Math.abs(im1[p]));
     }
     if (largest < NEGLIGIBLE) return;
     const spent = term;
