@@ -10,13 +10,13 @@ import {
 import { expmDense } from '../../algebra/expm-dense.js';
 import type { Experiment, Step } from '../../documents/experiment.schema.js';
 import { relativePolarisation, senseOf } from '../../interactions/carriers.js';
-import { EngineError } from '../../run/context.js';
 import { scansOf, type Scan, type ScanStep } from '../../sequence/steps.js';
 import { eigenSmall, type CoupledSpins } from './coupled-spins.js';
 import type { OrientedSpin } from './oriented-spins.js';
 import { radians, receiverPhase } from './preparation.js';
 
 type Pulse = Extract<Step, { pulse: unknown }>['pulse'];
+type Saturation = Extract<Step, { saturate: unknown }>['saturate'];
 
 /**
  * The density operator at the start of the signal, by propagation of rho_eq = sum (gamma/gamma_observed) Iz in the product
@@ -78,12 +78,12 @@ export class DensityPreparation {
       const total = totals(coupled, step.select.on);
       return keepWhere(rho, (row, column) => total[row] - total[column] === step.select.order);
     }
-    if ('pulse' in step) {
-      if (step.pulse.seconds === undefined) return sandwich(this.idealPulse(step.pulse, coupled), rho);
-      coupled.turnTo(direction[0], direction[1], direction[2]);
-      return sandwich(this.softPulse(step.pulse, step.pulse.seconds, coupled), rho);
-    }
-    throw new EngineError('UNSUPPORTED', 'saturation is not computed for oriented samples', 'sequence');
+    if ('pulse' in step && step.pulse.seconds === undefined) return sandwich(this.idealPulse(step.pulse, coupled), rho);
+    const field =
+      'pulse' in step ? this.pulseField(step.pulse) : 'saturate' in step ? saturation(step.saturate, coupled) : null;
+    if (!field) return rho;
+    coupled.turnTo(direction[0], direction[1], direction[2]);
+    return sandwich(driven(coupled, field), rho);
   }
 
   private idealPulse(pulse: Pulse, { spins }: CoupledSpins): ComplexMatrix {
@@ -100,33 +100,67 @@ export class DensityPreparation {
     return turn;
   }
 
-  /** All couplings and offsets on, in the frame of the pulse's own frequency, then back to that of the carrier. */
-  private softPulse(pulse: Pulse, seconds: number, coupled: CoupledSpins): ComplexMatrix {
-    const { spins, dimension } = coupled;
-    const shift = senseOf(pulse.on, this.experiment.observe) * (pulse.offsetHz ?? 0);
-    const total = totals(coupled, pulse.on);
-    const hamiltonian = fullHamiltonian(coupled);
-    for (let s = 0; s < dimension; s++) hamiltonian.real[s * (dimension + 1)] -= shift * total[s];
-    const nutation = pulse.flip / (360 * seconds);
-    spins.forEach((spin, k) => {
-      if (spin.isotope !== pulse.on) return;
-      const field = spins
-        .map((other, l) => (l === k ? transverse(spin, pulse.phase) : complexIdentity(2 * other.spin + 1)))
-        .reduce(kron);
-      addScaledInto(hamiltonian, field, nutation);
-    });
-    const during = propagator(hamiltonian, 2 * Math.PI * seconds);
-    for (let s = 0; s < dimension; s++) {
-      const angle = -2 * Math.PI * shift * seconds * total[s];
-      const [c, sine] = [Math.cos(angle), Math.sin(angle)];
-      for (let p = s * dimension; p < (s + 1) * dimension; p++) {
-        const re = during.real[p];
-        during.real[p] = c * re - sine * during.imag[p];
-        during.imag[p] = sine * re + c * during.imag[p];
-      }
-    }
-    return during;
+  private pulseField({ on, flip, phase, seconds = 0, offsetHz = 0 }: Pulse): DrivingField {
+    const shift = senseOf(on, this.experiment.observe) * offsetHz;
+    return {
+      isotope: on,
+      drives: ({ isotope }) => isotope === on,
+      nutation: flip / (360 * seconds),
+      phase,
+      shift,
+      seconds,
+    };
   }
+}
+
+/** A field of constant strength on some spins of an isotope. */
+interface DrivingField {
+  readonly isotope: string;
+  readonly drives: (spin: OrientedSpin) => boolean;
+  /** Hz */
+  readonly nutation: number;
+  /** degrees */
+  readonly phase: number;
+  /** Hz from the carrier, with the sense of precession. */
+  readonly shift: number;
+  readonly seconds: number;
+}
+
+/** A field on one nucleus at its isotropic shift; a cluster that does not hold it just evolves. */
+function saturation({ nucleus, seconds, nutationHz }: Saturation, { spins }: CoupledSpins): DrivingField {
+  const target = spins.find(({ id }) => id === nucleus);
+  const drives = ({ id }: OrientedSpin) => id === nucleus;
+  const { isotope, offset } = target ?? { isotope: '', offset: 0 };
+  return { isotope, drives, nutation: nutationHz, phase: 0, shift: offset, seconds };
+}
+
+/** The propagator with all couplings and offsets on, in the frame of the field's own frequency, then back to that of the carrier. */
+function driven(
+  coupled: CoupledSpins,
+  { isotope, drives, nutation, phase, shift, seconds }: DrivingField,
+): ComplexMatrix {
+  const { spins, dimension } = coupled;
+  const total = totals(coupled, isotope);
+  const hamiltonian = fullHamiltonian(coupled);
+  for (let s = 0; s < dimension; s++) hamiltonian.real[s * (dimension + 1)] -= shift * total[s];
+  spins.forEach((spin, k) => {
+    if (!drives(spin)) return;
+    const field = spins
+      .map((other, l) => (l === k ? transverse(spin, phase) : complexIdentity(2 * other.spin + 1)))
+      .reduce(kron);
+    addScaledInto(hamiltonian, field, nutation);
+  });
+  const during = propagator(hamiltonian, 2 * Math.PI * seconds);
+  for (let s = 0; s < dimension; s++) {
+    const angle = -2 * Math.PI * shift * seconds * total[s];
+    const [c, sine] = [Math.cos(angle), Math.sin(angle)];
+    for (let p = s * dimension; p < (s + 1) * dimension; p++) {
+      const re = during.real[p];
+      during.real[p] = c * re - sine * during.imag[p];
+      during.imag[p] = sine * re + c * during.imag[p];
+    }
+  }
+  return during;
 }
 
 /** Ix cos(phase) + Iy sin(phase) of one spin, states m = I .. -I. */

@@ -8,8 +8,9 @@ import { nuclide } from '../../nuclides/nuclides.js';
 
 /** One spin of an oriented sample; a group of equivalent nuclei is as many spins. */
 export interface OrientedSpin {
-  /** Row of `system.nuclei`. */
+  /** Row of `system.nuclei`, and its id. */
   readonly row: number;
+  readonly id: string;
   readonly isotope: string;
   readonly spin: number;
   /** Hz from the carrier, isotropic. */
@@ -75,9 +76,10 @@ export function joined(count: number, pairs: readonly { a: number; b: number }[]
 function spinsOf(system: SpinSystem, experiment: Experiment, state?: ExchangeState): OrientedSpin[] {
   const offsets = offsetsOf(system, experiment, state);
   return system.nuclei.flatMap((nucleus, row) => {
-    const { isotope, count } = nucleus;
+    const { id, isotope, count } = nucleus;
     const spin: OrientedSpin = {
       row,
+      id,
       isotope,
       spin: nuclide(isotope).spin,
       offset: offsets[row],

@@ -11,6 +11,7 @@ import { larmorMHz } from '../../nuclides/nuclides.js';
 import { EngineError, SILENT } from '../../run/context.js';
 import type { ComplexArray } from '../../run/solved.js';
 import { solveBlocks } from '../blocks/solve-blocks.js';
+import { solveLiouville } from '../liouville/solve-liouville.js';
 import { mergeParts, planParts, simulatePart, solveOriented } from './solve-oriented.js';
 
 const fidOf = (system: SpinSystem, experiment: ReturnType<typeof experimentOf>) =>
@@ -349,6 +350,45 @@ describe('preparation', () => {
     const long = fidOf(deuteron, experimentOf({ ...setting, sample, sequence: sequence(1e-5) }));
     expect(distance(short, ideal)).toBeLessThan(1e-4);
     expect(distance(long, ideal)).toBeGreaterThan(0.1);
+  });
+
+  it.each<[string, ExperimentInput['sequence']]>([
+    ['a refocused INEPT', { recipe: 'inept', from: '1H', j: 140, refocused: true, multiplicity: 2 }],
+    ['a spin echo', { recipe: 'spin-echo', tau: 0.0013 }],
+    [
+      'pulses of all kinds',
+      {
+        steps: [
+          { pulse: { on: '13C', flip: 80, phase: 15, seconds: 2e-4, offsetHz: 700 } },
+          { saturate: { nucleus: 'H1', seconds: 0.01, nutationHz: 40 } },
+          { decouple: ['1H'] },
+          { delay: 0.002 },
+          { decouple: [] },
+          { pulse: { on: '1H', flip: 50, phase: 0 } },
+          { select: { on: '1H', order: 0 } },
+          { pulse: { on: '13C', flip: 30, phase: 90 } },
+          { acquire: { phase: 25 } },
+        ],
+      },
+    ],
+  ])('propagates through %s as in a solution, in another way', (_, sequence) => {
+    // Without tensors a crystal is a solution, which the Liouville solver steps through in its own way.
+    const system = systemOf({
+      nuclei: [
+        { id: 'C', isotope: '13C', shift: 101, lineWidth: 20 },
+        { id: 'H1', isotope: '1H', shift: 4 },
+        { id: 'H2', isotope: '1H', shift: 4.7 },
+      ],
+      couplings: [
+        { between: ['C', 'H1'], j: 140 },
+        { between: ['C', 'H2'], j: 8 },
+        { between: ['H1', 'H2'], j: -12 },
+      ],
+    });
+    const crystalline = fidOf(system, carbonExperiment({ sample: crystal(10, 20, 30), sequence }));
+    const dissolved = solveLiouville(system, carbonExperiment({ sequence }), SILENT).fid;
+    expect(Math.hypot(dissolved.real[0], dissolved.imag[0])).toBeGreaterThan(0.01);
+    expect(distance(crystalline, dissolved)).toBeLessThan(1e-8);
   });
 
   it('says what it does not compute', () => {
