@@ -13,7 +13,7 @@ import { hamiltoniansOf, isClosed, type Ensemble } from './ensemble.js';
 import { generatorOf } from './generator.js';
 import type { DrivingField, SparseHamiltonian } from './hamiltonian.js';
 import { neededOrders, type NeededOrders } from './needed-orders.js';
-import { evolutionSeconds, evolveVector, signalsOf } from './open-evolution.js';
+import { evolutionSeconds, evolveVector, samplingSeconds, signalsOf } from './open-evolution.js';
 import { applyPulse, isotopeTotals, rotateAboutZ } from './rotations.js';
 import { coherenceBlocks, raising, type CoherenceBlock } from './spin-space.js';
 
@@ -270,18 +270,18 @@ export class ScanRunner {
     decoupled: readonly string[],
     onProgress: (fraction: number) => void,
   ): ComplexArray[] {
-    const { states, experiment } = this.ensemble;
+    const { states, experiment, populations } = this.ensemble;
     const { points, width } = experiment.acquisition;
+    const sampling = { dwell: 1 / width, points };
     const generator = this.generator(b, decoupled);
-    this.note(generator, evolutionSeconds(generator, points / width, points));
+    this.note(generator, samplingSeconds(generator, sampling));
     const everyState = probes.map((probe) => {
       const all = new Float64Array(states.length * probe.length);
       for (let s = 0; s < states.length; s++) all.set(probe, s * probe.length);
       return all;
     });
-    return signalsOf(generator, v, everyState, { dwell: 1 / width, points }, this.counts, (k) =>
-      onProgress(k / points),
-    );
+    const weights = Float64Array.from(v.real, (_, i) => populations[Math.floor((i * states.length) / v.real.length)]);
+    return signalsOf(generator, v, everyState, weights, sampling, this.counts, onProgress);
   }
 
   /** Sticks at E_bra - E_ket with amplitude probe times rho, both among eigenstates. */
