@@ -3,7 +3,7 @@ import type { Experiment } from '../../documents/experiment.schema.js';
 import type { SpinSystem } from '../../documents/system.schema.js';
 import type { RunContext } from '../../run/context.js';
 import { refuseBeyond } from '../../run/limits.js';
-import { scansOf } from '../../sequence/steps.js';
+import { scansOf, type ScanStep } from '../../sequence/steps.js';
 import { decayClasses } from './decay-classes.js';
 import { isCommuting, joined, observedClusters, type SpinCluster } from './oriented-spins.js';
 import { decouplingSettings, pulsedState } from './preparation.js';
@@ -109,9 +109,10 @@ function coupledCost(cluster: SpinCluster, counts: BlockCounts, experiment: Expe
     const step = cubes * SECONDS.step + 2 * (terms * SECONDS.term + blocks * SECONDS.block);
     return { seconds: steps * (step + transitions * SECONDS.line), transitions, bytes: bytes + 48 * steps * squares };
   }
-  const prepared = pulsed
+  const products = pulsed
     ? 0
-    : scansOf(experiment).reduce((sum, { steps }) => sum + 2 * steps.length, 0) * dimension ** 3;
+    : scansOf(experiment).reduce((sum, { steps }) => sum + steps.map(productsOf).reduce(add, 0), 0);
+  const prepared = products * dimension ** 3;
   const seconds =
     cubes * SECONDS.eigen +
     terms * SECONDS.term +
@@ -119,6 +120,16 @@ function coupledCost(cluster: SpinCluster, counts: BlockCounts, experiment: Expe
     transitions * SECONDS.interpolated +
     prepared * SECONDS.product;
   return { seconds, transitions, bytes };
+}
+
+/** Products of the whole dimension that a step takes: two about a propagator, and those of an exponential. */
+function productsOf(step: ScanStep): number {
+  const driven = 'saturate' in step || ('pulse' in step && step.pulse.seconds !== undefined);
+  return driven ? 20 : 2;
+}
+
+function add(a: number, b: number): number {
+  return a + b;
 }
 
 interface BlockCounts {
