@@ -51,6 +51,8 @@ describe('readXyz', () => {
     ['1\n\nQq 0 0 0', 3, 'not an element'],
     ['1\n\nH 0 0', 3, 'three coordinates'],
     ['2\n\nH 0 0 0\nH 0 0 1.0.0', 4, "z is '1.0.0'"],
+    ['1\n\nH 0 0x10 0', 3, "y is '0x10'"],
+    ['1\n\nH 0 0 1e999', 3, "z is '1e999'"],
     [`${GEOMETRY_LIMITS.atoms + 1}\n\n`, 1, 'at most'],
     ['1\n\nH 0 0 0' + ' '.repeat(GEOMETRY_LIMITS.characters), 0, 'at most'],
   ])('refuses %j naming line %i', (text, line, reason) => {
@@ -161,5 +163,38 @@ describe('readMolfile', () => {
     const [where, why] = refusal(() => readMolfile(text));
     expect(why).toContain(reason);
     expect(where).toBe(line);
+  });
+});
+
+describe('whatever the file', () => {
+  it('is read or refused by line, nothing else', () => {
+    const damage = fc.record({
+      line: fc.nat(),
+      column: fc.nat(),
+      length: fc.integer({ min: 0, max: 6 }),
+      text: fc.string({ maxLength: 6 }),
+    });
+    const files = [V2000.join('\n'), V3000.join('\n'), WATER];
+    fc.assert(
+      fc.property(fc.constantFrom(...files), fc.array(damage, { minLength: 1, maxLength: 4 }), (file, damages) => {
+        const lines = file.split(/\r?\n/);
+        for (const { line, column, length, text } of damages) {
+          const old = lines[line % lines.length];
+          const at = column % (old.length + 1);
+          lines[line % lines.length] = old.slice(0, at) + text + old.slice(at + length);
+        }
+        const damaged = lines.join('\n');
+        for (const read of [readMolfile, readXyz]) {
+          try {
+            const { atoms } = read(damaged);
+            expect(atoms.every(({ position }) => position.every(Number.isFinite))).toBe(true);
+          } catch (error) {
+            expect(error).toBeInstanceOf(GeometryRefused);
+            expect((error as GeometryRefused).line).toBeLessThanOrEqual(damaged.split(/\r\n|\r|\n/).length + 1);
+          }
+        }
+      }),
+      { numRuns: 300 },
+    );
   });
 });

@@ -66,12 +66,14 @@ export function elementOf(name: string, line: number): Pick<GeometryAtom, 'eleme
   return { element: symbol };
 }
 
+const DECIMAL = /^[+-]?(\d+\.?\d*|\.\d+)([eE][+-]?\d+)?$/;
+
 /** Three coordinates. Throws GeometryRefused naming `line`. */
 export function positionOf(fields: readonly string[], line: number): [number, number, number] {
   const numbers = ['x', 'y', 'z'].map((axis, i) => {
     const field = (fields[i] ?? '').trim();
-    const value = Number(field);
-    if (field === '' || !Number.isFinite(value)) throw new GeometryRefused(line, `${axis} is '${field}', not a number`);
+    const value = DECIMAL.test(field) ? Number(field) : NaN;
+    if (!Number.isFinite(value)) throw new GeometryRefused(line, `${axis} is '${field}', not a number`);
     return value;
   });
   return [numbers[0], numbers[1], numbers[2]];
