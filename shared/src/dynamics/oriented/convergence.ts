@@ -15,7 +15,10 @@ export function spectralDistanceHz(a: ComplexArray, b: ComplexArray, width: numb
   const size = re * re + im * im;
   if (size === 0) return 0;
   for (let k = 1; k < n; k++) {
-    const [x, y] = [a.real[k] - b.real[k], a.imag[k] - b.imag[k]];
+    // Without a window that ends at zero, ripples of a cut FID would add up over the whole width.
+    const weight = Math.cos((Math.PI * k) / (2 * n)) ** 2;
+    const x = weight * (a.real[k] - b.real[k]);
+    const y = weight * (a.imag[k] - b.imag[k]);
     difference.real[k] = (x * re + y * im) / size;
     difference.imag[k] = (y * re - x * im) / size;
   }
