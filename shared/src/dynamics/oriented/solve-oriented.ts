@@ -22,9 +22,9 @@ export interface PartialSignal {
 const MOST_PARTS = 64;
 const SHORTEST_PART = 0.25;
 
-/** Into how many parts the run of an oriented sample is worth being cut. */
+/** Into how many parts a run is worth being cut: 1 where there is nothing to average over. */
 export function planParts(system: SpinSystem, experiment: Experiment): number {
-  if (experiment.sample.kind === 'crystal') return 1;
+  if (!('orientations' in experiment.sample)) return 1;
   const { seconds } = orientedCost(system, experiment);
   return Math.min(MOST_PARTS, Math.ceil(seconds / SHORTEST_PART));
 }
