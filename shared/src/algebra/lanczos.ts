@@ -1,11 +1,13 @@
 import type { ComplexArray } from '../run/solved.js';
 import { spectralMeasure, type SpectralMeasure } from './eigen/complex-tridiagonal.js';
+import { withKernels, type Kernels, type KernelWorkspace, type Slab } from './kernels/kernels.js';
 import { applySparseInto, type SparseComplex } from './sparse.js';
 
 /**
  * Signals p^T exp(A t) v of a large sparse complex symmetric A by Lanczos recursion with the product x^T y (G. Moro and J. H.
  * Freed, J. Chem. Phys. 74 (1981) 3757): A Q = Q T with T tridiagonal and Q^T Q = 1, so that q^T exp(A t) q = e1^T exp(T t) e1 for
- * all times at once. Every vector is made orthogonal to all before it, so that the recursion ends with the size of A at the latest.
+ * all times at once. The vectors are kept orthogonal to all before
+ * them, so that the recursion ends with the size of A at the latest.
  */
 export interface Sampling {
   readonly dwell: number;
@@ -14,8 +16,14 @@ export interface Sampling {
 
 /** x^T x below this part of |x|^2 has lost its figures. */
 const BREAKDOWN = 1e-10;
-/** Overlaps below this beside |A q| stay: orthogonality to about the square root of rounding is enough (H. D. Simon, Math. Comput. 42 (1984) 115). */
-const ROUNDING = 1e-12;
+/**
+ * Orthogonality to about the square root of rounding is enough (H. D. Simon, Math. Comput. 42 (1984) 115): overlaps below ROUNDING
+ * beside |A q| stay, and above MOST_OVERLAP every vector is looked at from then on.
+ */
+const ROUNDING = 1e-13;
+const MOST_OVERLAP = 1e-10;
+/** Steps without a look at the older vectors. Found by trial; not derived. */
+const LONGEST_PAUSE = 4;
 /** A new direction this short beside A q is rounding. */
 const CLOSED = 1e-13;
 /** Weights below this part of the whole are left out. */
@@ -71,75 +79,155 @@ function ratioOf({ real, imag }: ComplexArray, p: Float64Array): [number, number
   return rest <= 1e-26 * norm ? ratio : null;
 }
 
-/** The measure of A seen from `start`, times start^T start. */
+/** The measure of A seen from `start`, times start^T start; null where the recursion breaks down. */
 function wholeMeasure(
   a: SparseComplex,
   start: ComplexArray,
   counts: { products: number },
   onStep: (fraction: number) => void,
 ): SpectralMeasure | null {
-  const recursion = new Recursion(a, start);
-  while (recursion.state === 'running') {
-    recursion.advance();
-    counts.products++;
-    onStep((recursion.steps / a.size) ** 2);
+  const weight = selfProduct(start);
+  if (!(Math.hypot(...weight) > BREAKDOWN * length(start) ** 2)) return null;
+  const n = a.size;
+  const found = withKernels(2 * n * (n + 6), (workspace) => {
+    const recursion = new Recursion(a, start, squareRoot(weight), workspace);
+    while (recursion.state === 'running') {
+      recursion.advance();
+      counts.products++;
+      onStep((recursion.steps / n) ** 2);
+    }
+    return recursion.measure();
+  });
+  if (!found) return null;
+  const [re, im] = weight;
+  for (let k = 0; k < found.weightReal.length; k++) {
+    const own = found.weightReal[k];
+    found.weightReal[k] = re * own - im * found.weightImag[k];
+    found.weightImag[k] = re * found.weightImag[k] + im * own;
   }
-  return recursion.state === 'broken' ? null : recursion.measure();
+  return found;
 }
 
-/** The growing tridiagonal matrix and the vectors behind it. */
+/** The growing tridiagonal matrix and the vectors behind it, which stand in the kernels' memory, real parts before imaginary ones. */
 class Recursion {
   steps = 0;
   state: 'running' | 'closed' | 'broken' = 'running';
+  private readonly n: number;
   private readonly diagonal: ComplexArray;
   private readonly beside: ComplexArray;
-  private readonly basis: ComplexArray[] = [];
-  private readonly next: ComplexArray;
-  private readonly weight: [number, number];
+  private readonly basis: Slab;
+  private readonly next: SplitVector;
+  /** Room for what is needed to take products of the basis with `next`, and for these. */
+  private readonly forReal: Slab;
+  private readonly forImag: Slab;
+  private readonly real: Slab;
+  private readonly imag: Slab;
+  private readonly kernels: Kernels;
+  /** Steps to go without looking at the older vectors, steps between two looks, and whether a look is the second of two. */
+  private rest = 0;
+  private pause = 2;
+  private second = false;
 
   constructor(
     private readonly a: SparseComplex,
     start: ComplexArray,
+    norm: [number, number],
+    { kernels, take }: KernelWorkspace,
   ) {
-    this.next = complexArray(a.size);
-    this.diagonal = complexArray(a.size);
-    this.beside = complexArray(a.size);
-    this.weight = selfProduct(start);
-    if (!(Math.hypot(...this.weight) > BREAKDOWN * length(start) ** 2)) this.state = 'broken';
-    else this.basis.push(quotient(start, squareRoot(this.weight)));
+    const n = a.size;
+    this.n = n;
+    this.kernels = kernels;
+    this.basis = take(2 * n * n);
+    [this.forReal, this.forImag] = [take(2 * n), take(2 * n)];
+    [this.real, this.imag] = [take(n), take(n)];
+    this.next = split(take(2 * n), n);
+    this.diagonal = complexArray(n);
+    this.beside = complexArray(n);
+    divideInto(this.vector(0), start, norm);
   }
 
   advance(): void {
-    const { a, steps, basis, next } = this;
-    applySparseInto(next, a, basis[steps]);
+    const { a, steps, next, n } = this;
+    const current = this.vector(steps);
+    applySparseInto(next, a, current);
     const size = length(next);
-    [this.diagonal.real[steps], this.diagonal.imag[steps]] = product(basis[steps], next);
-    for (let k = steps; k >= Math.max(0, steps - 1); k--) subtract(next, basis[k], ...product(basis[k], next));
-    removeOlder(next, basis, steps - 1, ROUNDING * size);
+    [this.diagonal.real[steps], this.diagonal.imag[steps]] = product(current, next);
+    for (let k = steps; k >= Math.max(0, steps - 1); k--) {
+      const q = this.vector(k);
+      subtract(next, q, ...product(q, next));
+    }
+    this.keepOrthogonal(size);
     this.steps++;
     const rest = length(next);
     const square = selfProduct(next);
-    if (rest <= CLOSED * size || this.steps === a.size) this.state = 'closed';
+    if (rest <= CLOSED * size || this.steps === n) this.state = 'closed';
     else if (!(Math.hypot(...square) > BREAKDOWN * rest * rest)) this.state = 'broken';
     else {
       const root = squareRoot(square);
       [this.beside.real[steps], this.beside.imag[steps]] = root;
-      basis.push(quotient(next, root));
+      divideInto(this.vector(this.steps), next, root);
     }
   }
 
-  /** Weights times start^T start; null where T can't be diagonalised. */
   measure(): SpectralMeasure | null {
-    const found = spectralMeasure(this.steps, this.diagonal, this.beside);
-    if (!found) return null;
-    const [re, im] = this.weight;
-    for (let k = 0; k < this.steps; k++) {
-      const weight = found.weightReal[k];
-      found.weightReal[k] = re * weight - im * found.weightImag[k];
-      found.weightImag[k] = re * found.weightImag[k] + im * weight;
-    }
-    return found;
+    return this.state === 'broken' ? null : spectralMeasure(this.steps, this.diagonal, this.beside);
   }
+
+  private vector(k: number): ComplexArray {
+    const first = 2 * this.n * k;
+    const { data } = this.basis;
+    return { real: data.subarray(first, first + this.n), imag: data.subarray(first + this.n, first + 2 * this.n) };
+  }
+
+  /** Makes two vectors in a row orthogonal to all older ones, then rests for as long as little grows meanwhile. */
+  private keepOrthogonal(size: number): void {
+    if (this.rest > 0) {
+      this.rest--;
+      return;
+    }
+    const overlap = this.removeOlder(this.steps - 1, ROUNDING * size) / size;
+    if (this.second) this.rest = this.pause;
+    else if (overlap > MOST_OVERLAP) this.pause = 0;
+    else if (overlap < ROUNDING) this.pause = Math.min(LONGEST_PAUSE, this.pause + 1);
+    this.second = !this.second;
+  }
+
+  /** Takes off what rounding has put along basis vectors 0..count-1, where any of that is more than `least`; gives the largest part. */
+  private removeOlder(count: number, least: number): number {
+    if (count <= 0) return 0;
+    const { kernels, n, basis, next, forReal, forImag, real, imag } = this;
+    // Re q^T w = (qr, qi).(wr, -wi) and Im q^T w = (qr, qi).(wi, wr)
+    forReal.data.set(next.real);
+    for (let k = 0; k < n; k++) forReal.data[n + k] = -next.imag[k];
+    forImag.data.set(next.imag);
+    forImag.data.set(next.real, n);
+    kernels.dotRows(count, 2 * n, basis.at, 16 * n, forReal.at, real.at);
+    kernels.dotRows(count, 2 * n, basis.at, 16 * n, forImag.at, imag.at);
+    let largest = 0;
+    for (let k = 0; k < count; k++) {
+      largest = Math.max(largest, Math.abs(real.data[k]), Math.abs(imag.data[k]));
+      real.data[k] = -real.data[k];
+    }
+    if (largest <= least) return largest;
+    // w -= (hr + i hi)(qr + i qi): the real factors go straight onto w, the imaginary ones by way of scratch.
+    kernels.addRows(count, 2 * n, basis.at, 16 * n, real.at, next.at);
+    forReal.data.fill(0);
+    kernels.addRows(count, 2 * n, basis.at, 16 * n, imag.at, forReal.at);
+    for (let k = 0; k < n; k++) {
+      next.real[k] += forReal.data[n + k];
+      next.imag[k] -= forReal.data[k];
+    }
+    return largest;
+  }
+}
+
+/** A complex vector in the kernels' memory. */
+interface SplitVector extends ComplexArray {
+  readonly at: number;
+}
+
+function split({ at, data }: Slab, n: number): SplitVector {
+  return { at, real: data.subarray(0, n), imag: data.subarray(n, 2 * n) };
 }
 
 /** Samples kept up by multiplication before an exponential is taken anew. */
@@ -203,26 +291,6 @@ function length({ real, imag }: ComplexArray): number {
   return Math.sqrt(sum);
 }
 
-/** Takes off what rounding has put along basis vectors 0..end-1 where that is more than `least`; pairs of vectors at a time. */
-function removeOlder(w: ComplexArray, basis: readonly ComplexArray[], end: number, least: number): void {
-  const [wr, wi] = [w.real, w.imag];
-  for (let j = 0; j < end; j += 2) {
-    const [a, b] = [basis[j], basis[Math.min(j + 1, end - 1)]];
-    const [ar, ai, br, bi] = [a.real, a.imag, b.real, b.imag];
-    let [pr, pi, qr, qi] = [0, 0, 0, 0];
-    for (let k = 0; k < wr.length; k++) {
-      const x = wr[k];
-      const y = wi[k];
-      pr += ar[k] * x - ai[k] * y;
-      pi += ar[k] * y + ai[k] * x;
-      qr += br[k] * x - bi[k] * y;
-      qi += br[k] * y + bi[k] * x;
-    }
-    if (Math.abs(pr) + Math.abs(pi) > least) subtract(w, a, pr, pi);
-    if (b !== a && Math.abs(qr) + Math.abs(qi) > least) subtract(w, b, qr, qi);
-  }
-}
-
 /** w -= (re + i im) q */
 function subtract(w: ComplexArray, q: ComplexArray, re: number, im: number): void {
   for (let k = 0; k < w.real.length; k++) {
@@ -231,13 +299,14 @@ function subtract(w: ComplexArray, q: ComplexArray, re: number, im: number): voi
   }
 }
 
-/** w/(re + i im) */
-function quotient(w: ComplexArray, [re, im]: [number, number]): ComplexArray {
+/** out = w/(re + i im) */
+function divideInto(out: ComplexArray, w: ComplexArray, [re, im]: [number, number]): void {
   const size = re * re + im * im;
-  return {
-    real: w.real.map((x, k) => (x * re + w.imag[k] * im) / size),
-    imag: w.imag.map((x, k) => (x * re - w.real[k] * im) / size),
-  };
+  for (let k = 0; k < w.real.length; k++) {
+    const [x, y] = [w.real[k], w.imag[k]];
+    out.real[k] = (x * re + y * im) / size;
+    out.imag[k] = (y * re - x * im) / size;
+  }
 }
 
 function squareRoot([re, im]: [number, number]): [number, number] {
