@@ -4,6 +4,7 @@ import { offsetsOf } from '../../interactions/carriers.js';
 import { nuclide } from '../../nuclides/nuclides.js';
 import { scansOf } from '../../sequence/steps.js';
 import { observedFragments } from './fragments.js';
+import { LANCZOS_CUBE, MOST_LANCZOS } from './open-evolution.js';
 import { nucleusRates } from './random-field.js';
 
 /** Work of `solveLiouville`, estimated from dimensions before anything is built. */
@@ -52,7 +53,9 @@ export function liouvilleCost(system: SpinSystem, experiment: Experiment): Liouv
     const spread = rows.reduce((sum, row) => sum + Math.abs(offsets[row]), 0);
     const radians = 2 * Math.PI * spread * duration;
     cost.bytes = Math.max(cost.bytes, ELEMENT_BYTES * states * basis ** 2 + COHERENCE_BYTES * detected);
-    cost.seconds += steps * ELEMENT_SECONDS * states * basis ** 2 + detected * radians * COHERENCE_SECONDS;
+    const recursion = detected > MOST_LANCZOS ? Infinity : LANCZOS_CUBE * detected ** 3;
+    cost.seconds +=
+      steps * ELEMENT_SECONDS * states * basis ** 2 + Math.min(detected * radians * COHERENCE_SECONDS, recursion);
     cost.basis = Math.max(cost.basis, basis);
     cost.detected = Math.max(cost.detected, detected);
   }

@@ -9,7 +9,7 @@ import type { ComplexArray } from '../../run/solved.js';
 const DENSE_FLOP = 4e-10;
 const KRYLOV_ENTRY = 6e-9;
 const KRYLOV_ROW = 5e-8;
-const LANCZOS_CUBE = 4e-9;
+export const LANCZOS_CUBE = 7e-10;
 const LANCZOS_SQUARE = 1e-7;
 const LANCZOS_SAMPLE = 6e-9;
 /** Products of dense matrices in an exponential besides its squarings. */
@@ -22,7 +22,7 @@ const SAMPLED_PER_RADIAN = 4.5;
 const TOLERANCE = 1e-10;
 /** Above these a dense matrix, or all vectors of a recursion, are not even thought of. */
 const MOST_DENSE = 1200;
-const MOST_LANCZOS = 4000;
+export const MOST_LANCZOS = 4000;
 
 /** Seconds that exp(A t) v takes by a dense exponential. */
 function denseSeconds(a: SparseComplex, t: number): number {
@@ -39,9 +39,10 @@ function krylovSeconds(a: SparseComplex, t: number, samples = 0): number {
 }
 
 /** Seconds that one signal takes by a whole Lanczos recursion. */
-function lanczosSeconds({ size }: SparseComplex, samples: number): number {
+function lanczosSeconds({ size, columns }: SparseComplex, samples: number): number {
   if (size > MOST_LANCZOS) return Infinity;
-  return LANCZOS_CUBE * size ** 3 + LANCZOS_SQUARE * size ** 2 + LANCZOS_SAMPLE * size * samples;
+  const products = KRYLOV_ENTRY * size * columns.length;
+  return LANCZOS_CUBE * size ** 3 + LANCZOS_SQUARE * size ** 2 + products + LANCZOS_SAMPLE * size * samples;
 }
 
 /** Seconds that evolving will take. */
