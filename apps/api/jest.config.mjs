@@ -8,7 +8,7 @@ const swc = (parser) => [
       parser,
       transform: { legacyDecorator: true, decoratorMetadata: true, useDefineForClassFields: false },
     },
-    module: { type: 'commonjs', ignoreDynamic: true },
+    module: { type: 'commonjs', ignoreDynamic: false },
     sourceMaps: 'inline',
   },
 ];

@@ -66,17 +66,17 @@ function startWorker(workers: number): Worker {
   return new Worker(new URL('./batch.worker.mjs', import.meta.url), { workerData: { workers } });
 }
 
+/** One job, one answer. Only our own listeners are taken off: a Worker keeps some for itself. */
 function ask(worker: Worker, job: BatchJob): Promise<BatchReply & { lost?: boolean }> {
   return new Promise((resolve) => {
     const settle = (reply: BatchReply & { lost?: boolean }) => {
-      worker.removeAllListeners();
+      worker.off('message', settle).off('error', onError).off('exit', onExit);
       resolve(reply);
     };
-    worker.once('message', settle);
-    worker.once('error', (error) => settle({ name: job.name, exitCode: 1, lines: [error.message], lost: true }));
-    worker.once('exit', () =>
-      settle({ name: job.name, exitCode: 1, lines: ['the worker thread ended early'], lost: true }),
-    );
+    const lost = (line: string) => settle({ name: job.name, exitCode: 1, lines: [line], lost: true });
+    const onError = (error: Error) => lost(error.message);
+    const onExit = () => lost('the worker thread ended early');
+    worker.on('message', settle).on('error', onError).on('exit', onExit);
     worker.postMessage(job);
   });
 }

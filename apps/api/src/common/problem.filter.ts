@@ -47,6 +47,9 @@ function toProblem(error: unknown): Problem {
       errors,
     });
   }
+  if (error instanceof HttpException && error.getStatus() === 429) {
+    return new Problem(429, 'too-many', 'Too many tries from this address. Wait a minute and try again.');
+  }
   if (error instanceof HttpException) return new Problem(error.getStatus(), 'http', error.message);
   if (isBodyError(error)) return new Problem(error.status, 'body', error.message);
   return new Problem(

@@ -42,6 +42,7 @@ export function toProblem(body: unknown, status: number): Problem {
 /** What to tell about anything that was thrown. */
 export function messageOf(error: unknown): string {
   if (error instanceof Problem) return error.message;
-  if (error instanceof TypeError) return 'The server cannot be reached. Check the connection and try again.';
+  if (error instanceof TypeError && /fetch|network|load failed/i.test(error.message))
+    return 'The server cannot be reached. Check the connection and try again.';
   return error instanceof Error ? error.message : String(error);
 }

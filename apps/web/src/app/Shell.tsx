@@ -38,7 +38,7 @@ function PageWidth() {
   const wide = useMatches().some(({ pathname }) => /\/(systems|runs)\/[^/]+$/.test(pathname));
   if (wide) return <Outlet />;
   return (
-    <Container size={1200} py="xl" px="lg">
+    <Container size={1200} py="xl" px="lg" w="100%">
       <Outlet />
     </Container>
   );

@@ -147,7 +147,7 @@ function BenchHeader({
           classNames={{ input: classes.name }}
           value={draft.name}
           maxLength={200}
-          onChange={(event) => edit((now) => setField(now, 'name', event.currentTarget.value), 'name')}
+          onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'name', value), 'name')}
           error={draft.nuclei.length > 0 ? checked.errors.fields.get('name') : undefined}
         />
         <Text size="sm" c="dimmed">

@@ -214,14 +214,14 @@ export function Tables({
           autosize
           minRows={3}
           value={draft.notes}
-          onChange={(event) => edit((now) => setField(now, 'notes', event.currentTarget.value), 'notes')}
+          onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'notes', value), 'notes')}
           error={checked.errors.fields.get('notes')}
         />
         <TextInput
           label="Correlation time of tumbling, s"
           description="Needed for relaxation from tumbling; 5e-11 is a small molecule in water."
           value={draft.tauC}
-          onChange={(event) => edit((now) => setField(now, 'tauC', event.currentTarget.value), 'tauC')}
+          onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'tauC', value), 'tauC')}
           error={checked.errors.fields.get('tauC')}
         />
       </Tabs.Panel>

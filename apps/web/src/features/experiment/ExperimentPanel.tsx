@@ -95,7 +95,7 @@ export function ExperimentPanel({ labId, system, document, changed, experiment, 
           label="Sample"
           data={SAMPLES.map(({ value, label }) => ({ value, label }))}
           value={draft.cells['sample.kind']}
-          onChange={(event) => edit((now) => choose(now, 'sample.kind', event.currentTarget.value))}
+          onChange={({ currentTarget: { value } }) => edit((now) => choose(now, 'sample.kind', value))}
         />
         <AskFields
           asks={asksOf(draft, 'sample.kind')}
@@ -112,7 +112,7 @@ export function ExperimentPanel({ labId, system, document, changed, experiment, 
               label="Sequence"
               data={RECIPES.map(({ value, label }) => ({ value, label }))}
               value={draft.cells['sequence.recipe']}
-              onChange={(event) => edit((now) => choose(now, 'sequence.recipe', event.currentTarget.value))}
+              onChange={({ currentTarget: { value } }) => edit((now) => choose(now, 'sequence.recipe', value))}
             />
             <AskFields
               asks={asksOf(draft, 'sequence.recipe')}

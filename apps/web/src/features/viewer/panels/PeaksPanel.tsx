@@ -25,11 +25,9 @@ export function PeaksPanel({
     <>
       <Group align="flex-end" gap="lg" mb="sm">
         <div style={{ width: 260 }}>
-          <Text size="sm" id="peak-threshold">
-            Above {(100 * threshold).toFixed(1)} % of the highest
-          </Text>
+          <Text size="sm">Above {(100 * threshold).toFixed(1)} % of the highest</Text>
           <Slider
-            aria-labelledby="peak-threshold"
+            thumbLabel="Threshold of peaks"
             min={-3}
             max={-0.01}
             step={0.01}
