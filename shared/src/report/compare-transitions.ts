@@ -16,30 +16,87 @@ const DEGENERATE = 1e-5;
 
 /**
  * Compares the lines that `lowering` allows under `approximate` with their counterparts under `exact`: levels correspond by the
- * largest overlap of their states, degenerate levels of `approximate` being resolved by `exact` first.
+ * largest overlap of their states, degenerate levels of `approximate` being resolved by `exact` first. Sets of basis states that
+ * neither joins are treated apart.
  */
 export function compareTransitions(
   exact: ComplexMatrix,
   approximate: ComplexMatrix,
   lowering: ComplexMatrix,
 ): TransitionComparison {
-  const from = resolved(eigenstates(approximate), exact);
-  const to = eigenstates(exact);
+  const sets = separateSets(exact, approximate).map((members) => matchedLevels(exact, approximate, members));
+  const lines = sets.flatMap((upper) => sets.flatMap((lower) => linesBetween(lower, upper, lowering)));
+  const strongest = lines.reduce((most, { expected }) => Math.max(most, expected), 0);
+  const seen = lines.filter(({ expected }) => expected >= FAINTEST * strongest && expected > 0);
+  return {
+    displacement: seen.reduce((most, { shift }) => Math.max(most, Math.abs(shift)), 0),
+    intensity: seen.reduce((most, { expected, found }) => Math.max(most, Math.abs(found - expected) / strongest), 0),
+  };
+}
+
+interface ComparedLine {
+  /** Intensities under the approximate and the exact Hamiltonian. */
+  readonly expected: number;
+  readonly found: number;
+  /** Hz, exact less approximate. */
+  readonly shift: number;
+}
+
+/** One set of basis states with its levels under both Hamiltonians, counterparts in one order. */
+interface MatchedLevels {
+  readonly members: readonly number[];
+  readonly from: Levels;
+  readonly to: Levels;
+}
+
+function matchedLevels(exact: ComplexMatrix, approximate: ComplexMatrix, members: readonly number[]): MatchedLevels {
+  const inside = block(exact, members, members);
+  const from = resolved(eigenstates(block(approximate, members, members)), inside);
+  const to = eigenstates(inside);
   const partner = matchStates(from.states, to.states);
-  const [before, after] = [intensities(from.states, lowering), intensities(to.states, lowering)];
-  const strongest = before.reduce((most, value) => Math.max(most, value), 0);
-  const n = exact.rows;
-  let [displacement, intensity] = [0, 0];
-  for (let i = 0; i < n; i++) {
-    for (let j = 0; j < n; j++) {
-      const expected = before[i * n + j];
-      if (expected < FAINTEST * strongest) continue;
-      const shift = to.energies[partner[j]] - to.energies[partner[i]] - (from.energies[j] - from.energies[i]);
-      displacement = Math.max(displacement, Math.abs(shift));
-      intensity = Math.max(intensity, Math.abs(after[partner[i] * n + partner[j]] - expected) / strongest);
-    }
+  const n = members.length;
+  const sorted = complexMatrix(n, n);
+  partner.forEach((k, i) => setColumns(sorted, i, columns(to.states, k, k + 1)));
+  return { members, from, to: { energies: Float64Array.from(partner, (k) => to.energies[k]), states: sorted } };
+}
+
+/** Lines from the levels of `upper` to those of `lower`. */
+function linesBetween(lower: MatchedLevels, upper: MatchedLevels, lowering: ComplexMatrix): ComparedLine[] {
+  const between = block(lowering, lower.members, upper.members);
+  if (between.real.every((x) => x === 0)) return [];
+  const before = intensities(lower.from.states, between, upper.from.states);
+  const after = intensities(lower.to.states, between, upper.to.states);
+  const m = upper.members.length;
+  return Array.from(before, (expected, p) => {
+    const [i, j] = [Math.floor(p / m), p % m];
+    const frequency = (levels: 'from' | 'to') => upper[levels].energies[j] - lower[levels].energies[i];
+    return { expected, found: after[p], shift: frequency('to') - frequency('from') };
+  });
+}
+
+/** Smallest sets of basis states that no element of either matrix leaves. */
+function separateSets(a: ComplexMatrix, b: ComplexMatrix): number[][] {
+  const n = a.rows;
+  const root = Array.from({ length: n }, (_, k) => k);
+  const find = (k: number): number => (root[k] === k ? k : (root[k] = find(root[k])));
+  for (let p = 0; p < n * n; p++) {
+    if (a.real[p] !== 0 || a.imag[p] !== 0 || b.real[p] !== 0 || b.imag[p] !== 0)
+      root[find(Math.floor(p / n))] = find(p % n);
   }
-  return { displacement, intensity };
+  const sets = new Map<number, number[]>();
+  for (let k = 0; k < n; k++) sets.set(find(k), [...(sets.get(find(k)) ?? []), k]);
+  return [...sets.values()];
+}
+
+function block(m: ComplexMatrix, rows: readonly number[], across: readonly number[]): ComplexMatrix {
+  const out = complexMatrix(rows.length, across.length);
+  rows.forEach((row, i) => {
+    across.forEach((column, j) => {
+      out.real[i * across.length + j] = m.real[row * m.columns + column];
+      out.imag[i * across.length + j] = m.imag[row * m.columns + column];
+    });
+  });
+  return out;
 }
 
 /** Eigenstates as columns. */
@@ -90,8 +147,8 @@ function setColumns(m: ComplexMatrix, first: number, set: ComplexMatrix): void {
 }
 
 /** |<i| lowering |j>|^2 for all pairs of states. */
-function intensities(states: ComplexMatrix, lowering: ComplexMatrix): Float64Array {
-  return squares(multiplyComplex(adjoint(states), multiplyComplex(lowering, states)));
+function intensities(lower: ComplexMatrix, lowering: ComplexMatrix, upper: ComplexMatrix): Float64Array {
+  return squares(multiplyComplex(adjoint(lower), multiplyComplex(lowering, upper)));
 }
 
 function squares({ real, imag }: ComplexMatrix): Float64Array {

@@ -68,14 +68,21 @@ export function lineWidth(decay: Decay, end: number): number {
   return inner + outer;
 }
 
-/** Integral over 0..duration of envelope(t) cos(2 pi offset t) by Simpson's rule. */
+/** Integral over 0..duration of envelope(t) cos(2 pi offset t), s: closed without a Gaussian part, else by Simpson's rule. */
 function absorption(decay: Decay, duration: number, offset: number): number {
-  const steps = 2000;
+  const [rate, turn] = [Math.PI * decay.lorentzian, 2 * Math.PI * offset];
+  if (decay.gaussian === 0 && (rate !== 0 || turn !== 0)) {
+    // Real part of (1 - exp(-(rate + i turn) duration))/(rate + i turn)
+    const left = Math.exp(-rate * duration);
+    const [re, im] = [1 - left * Math.cos(turn * duration), left * Math.sin(turn * duration)];
+    return (re * rate + im * turn) / (rate * rate + turn * turn);
+  }
+  const steps = 400;
   let sum = 0;
   for (let k = 0; k <= steps; k++) {
     const t = (k * duration) / steps;
     const weight = k === 0 || k === steps ? 1 : k % 2 === 1 ? 4 : 2;
-    sum += weight * envelope(decay, t) * Math.cos(2 * Math.PI * offset * t);
+    sum += weight * envelope(decay, t) * Math.cos(turn * t);
   }
   return (sum * duration) / (3 * steps);
 }

@@ -1,4 +1,4 @@
-import { addScaledInto, complexMatrix, kron, multiplyComplex, type ComplexMatrix } from '../algebra/dense.js';
+import { addScaledInto, complexMatrix, multiplyComplex, type ComplexMatrix } from '../algebra/dense.js';
 import { rotateTensor, type Matrix3 } from '../algebra/rotation.js';
 import type { Experiment } from '../documents/experiment.schema.js';
 import type { ExchangeState, SpinSystem } from '../documents/system.schema.js';
@@ -161,46 +161,50 @@ function cartesianSpin(spin: number): [ComplexMatrix, ComplexMatrix, ComplexMatr
 class OperatorSum {
   readonly matrix: ComplexMatrix;
   private readonly axes: [ComplexMatrix, ComplexMatrix, ComplexMatrix][];
+  private readonly strides: number[];
 
   constructor(readonly space: SpinSpace) {
     this.matrix = complexMatrix(space.dimension, space.dimension);
     this.axes = space.spins.map(cartesianSpin);
+    let stride = space.dimension;
+    this.strides = space.spins.map((spin) => (stride /= 2 * spin + 1));
   }
 
   /** v.I of one nucleus. */
   addVector(row: number, vector: readonly [number, number, number]): void {
-    vector.forEach((value, axis) => value !== 0 && this.add(value, new Map([[row, this.axes[row][axis]]])));
+    vector.forEach((value, axis) => value !== 0 && this.add(value, row, this.axes[row][axis], row, ONE));
   }
 
   /** Ia.T.Ib */
   addProduct(a: number, b: number, tensor: Matrix3): void {
     tensor.forEach((value, p) => {
-      if (value === 0) return;
-      this.add(
-        value,
-        new Map([
-          [a, this.axes[a][Math.floor(p / 3)]],
-          [b, this.axes[b][p % 3]],
-        ]),
-      );
+      if (value !== 0) this.add(value, a, this.axes[a][Math.floor(p / 3)], b, this.axes[b][p % 3]);
     });
   }
 
   addLocal(row: number, operator: ComplexMatrix): void {
-    this.add(1, new Map([[row, operator]]));
+    this.add(1, row, operator, row, ONE);
   }
 
-  private add(value: number, factors: ReadonlyMap<number, ComplexMatrix>): void {
-    const product = this.space.spins.reduce(
-      (left, spin, row) => kron(left, factors.get(row) ?? identity(2 * spin + 1)),
-      identity(1),
-    );
-    addScaledInto(this.matrix, product, value);
+  /** Adds value times the product of an operator of nucleus a and one of nucleus b. */
+  private add(value: number, a: number, left: ComplexMatrix, b: number, right: ComplexMatrix): void {
+    const { dimension } = this.space;
+    const { real, imag } = this.matrix;
+    const [strideA, strideB, n, m] = [this.strides[a], this.strides[b], left.rows, right.rows];
+    for (let column = 0; column < dimension; column++) {
+      const fromA = Math.floor(column / strideA) % n;
+      const fromB = Math.floor(column / strideB) % m;
+      for (let toA = 0, p = fromA; toA < n; toA++, p += n) {
+        if (left.real[p] === 0 && left.imag[p] === 0) continue;
+        for (let toB = 0, q = fromB; toB < m; toB++, q += m) {
+          const at = (column + (toA - fromA) * strideA + (toB - fromB) * strideB) * dimension + column;
+          real[at] += value * (left.real[p] * right.real[q] - left.imag[p] * right.imag[q]);
+          imag[at] += value * (left.real[p] * right.imag[q] + left.imag[p] * right.real[q]);
+        }
+      }
+    }
   }
 }
 
-function identity(size: number): ComplexMatrix {
-  const one = complexMatrix(size, size);
-  for (let p = 0; p < size * size; p += size + 1) one.real[p] = 1;
-  return one;
-}
+/** Stands for the second nucleus where there is only one. */
+const ONE = complexMatrix(1, 1, Float64Array.of(1));
