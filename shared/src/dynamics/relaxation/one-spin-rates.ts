@@ -4,6 +4,7 @@ import { nuclide } from '../../nuclides/nuclides.js';
 import { ladderOperators } from './rank-two-operators.js';
 import { redfieldMatrix, type Coherences } from './redfield-matrix.js';
 import { redfieldTerms, type RedfieldTerm } from './redfield.js';
+import type { SparseRows } from './sparse-rows.js';
 
 /**
  * Matrix elements of Gamma between operators of one spin, s^-1. Different mechanisms do not interfere in them, so that each is a
@@ -16,19 +17,32 @@ interface Fragment {
   readonly system: SpinSystem;
 }
 
-/** Rates of dIz_n/dt = -sum over m of R_nm (Iz_m - equilibrium), row-major over `system.nuclei`. */
-export function longitudinalRates(system: SpinSystem, frame: Frame): Float64Array {
+export interface OneSpinRates {
+  /** R_nm of dIz_n/dt = -sum over m of R_nm (Iz_m - equilibrium), row-major over `system.nuclei`. */
+  readonly longitudinal: Float64Array;
+  /** Decay of each I-. */
+  readonly transverse: Float64Array;
+}
+
+export function oneSpinRates(system: SpinSystem, frame: Frame): OneSpinRates {
   const n = system.nuclei.length;
-  const rates = new Float64Array(n * n);
+  const longitudinal = new Float64Array(n * n);
+  const transverse = new Float64Array(n);
   for (const { rows, system: part } of fragments(system)) {
     const levels = rows.map((_, k) => projections(part, k));
     const terms = redfieldTerms(part, frame);
+    const decays = new Map<string, SingleQuantum>();
     rows.forEach((row, k) => {
-      const norm = levels[k].reduce((sum, m) => sum + m * m, 0);
-      rows.forEach((other, l) => (rates[row * n + other] += exchanged(terms, levels[k], levels[l]) / norm));
+      const size = norm(levels[k]);
+      rows.forEach((other, l) => (longitudinal[row * n + other] += exchanged(terms, levels[k], levels[l]) / size));
+      const { isotope } = part.nuclei[k];
+      if (!decays.has(isotope)) decays.set(isotope, singleQuantum(part, k, terms));
+      const decay = decays.get(isotope)!;
+      const lowering = loweringElements(part, k, decay.set);
+      transverse[row] += overlap(decay, lowering, lowering);
     });
   }
-  return rates;
+  return { longitudinal, transverse };
 }
 
 /** Tr(X Gamma Y) of diagonal X and Y: 1/2 sum over the entries L_rc of |L_rc|^2 (x_r - x_c)(y_r - y_c). */
@@ -46,33 +60,18 @@ function exchanged(terms: readonly RedfieldTerm[], x: Float64Array, y: Float64Ar
   return sum;
 }
 
-/** Rate of I- of a nucleus. */
-export function transverseRate(system: SpinSystem, frame: Frame, row: number): number {
-  let rate = 0;
-  for (const { rows, system: part } of fragments(system)) {
-    const own = rows.indexOf(row);
-    if (own < 0) continue;
-    const set = singleQuantum(part, own);
-    const lowering = loweringElements(part, own, set);
-    rate += overlap(part, frame, set, lowering, lowering);
-  }
-  return rate;
-}
-
 /** Rate from I- of a nucleus to its antiphase I- Sz beside a dipolar partner, both operators normalised alike (2 I- Sz for S = 1/2). */
 export function crossCorrelatedRate(system: SpinSystem, frame: Frame, row: number, partner: number): number {
   const part = fragmentOf(system, [row, partner], true);
-  const set = singleQuantum(part, 0);
-  const lowering = loweringElements(part, 0, set);
+  const decay = singleQuantum(part, 0, redfieldTerms(part, frame));
+  const lowering = loweringElements(part, 0, decay.set);
   const other = projections(part, 1);
-  const antiphase = lowering.map((element, i) => element * other[set.kets[i]]);
-  return overlap(part, frame, set, antiphase, lowering) * Math.sqrt(norm(antiphase) / norm(lowering));
+  const antiphase = lowering.map((element, i) => element * other[decay.set.kets[i]]);
+  return overlap(decay, antiphase, lowering) * Math.sqrt(norm(antiphase) / norm(lowering));
 }
 
 /** x.Gamma y / sum of x^2 over a closed set of coherences. */
-function overlap(part: SpinSystem, frame: Frame, set: Coherences, x: Float64Array, y: Float64Array): number {
-  const dimension = projections(part, 0).length;
-  const { start, columns, values } = redfieldMatrix(redfieldTerms(part, frame), dimension, set);
+function overlap({ gamma: { start, columns, values } }: SingleQuantum, x: Float64Array, y: Float64Array): number {
   let sum = 0;
   for (let i = 0; i < x.length; i++) {
     for (let p = start[i]; p < start[i + 1]; p++) sum += x[i] * values[p] * y[columns[p]];
@@ -121,8 +120,14 @@ function projections(part: SpinSystem, row: number): Float64Array {
   );
 }
 
+/** A closed set of coherences with Gamma on it. */
+interface SingleQuantum {
+  readonly set: Coherences;
+  readonly gamma: SparseRows;
+}
+
 /** All |r><c| of order -1 of the nucleus's isotope and 0 of the others. */
-function singleQuantum(part: SpinSystem, own: number): Coherences {
+function singleQuantum(part: SpinSystem, own: number, terms: readonly RedfieldTerm[]): SingleQuantum {
   const { isotope } = part.nuclei[own];
   const all = part.nuclei.map((nucleus, row) => ({
     order: nucleus.isotope === isotope,
@@ -139,7 +144,8 @@ function singleQuantum(part: SpinSystem, own: number): Coherences {
       bras.push(c);
     }
   }
-  return { kets, bras };
+  const set = { kets, bras };
+  return { set, gamma: redfieldMatrix(terms, dimension, set) };
 }
 
 /** <ket| I- |bra> of one nucleus, the others unchanged. */

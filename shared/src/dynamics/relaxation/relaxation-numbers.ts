@@ -4,7 +4,7 @@ import type { SpinSystem } from '../../documents/system.schema.js';
 import { relativePolarisation, signedLarmorHz, type Frame } from '../../interactions/carriers.js';
 import { couplingsOf } from '../../interactions/scalar.js';
 import { nuclide } from '../../nuclides/nuclides.js';
-import { crossCorrelatedRate, longitudinalRates, transverseRate } from './one-spin-rates.js';
+import { crossCorrelatedRate, oneSpinRates } from './one-spin-rates.js';
 import { scalarRelaxation } from './scalar-relaxation.js';
 
 /** What tumbling does to one nucleus, from Redfield's Gamma. Times in s, widths in Hz; null where nothing relaxes it. */
@@ -35,11 +35,10 @@ export interface NucleusRelaxation {
  */
 export function relaxationNumbers(system: SpinSystem, frame: Frame): NucleusRelaxation[] {
   const { nuclei } = system;
-  const rates = longitudinalRates(system, frame);
+  const { longitudinal: rates, transverse: transverseRates } = oneSpinRates(system, frame);
   const isotopes = [...new Set(nuclei.map(({ isotope }) => isotope))];
   const saturatedOne = nuclei.map((_, row) => steadyState(system, rates, [row]));
   const saturatedAll = isotopes.map((isotope) => steadyState(system, rates, rowsOf(system, isotope)));
-  const transverseRates = nuclei.map((_, row) => transverseRate(system, frame, row));
   return nuclei.map((nucleus, row) => {
     const transverse = transverseRates[row];
     const together = rowsOf(system, nucleus.isotope).reduce(
