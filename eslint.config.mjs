@@ -16,6 +16,7 @@ const FLOORS = [
   'orientations',
   'spectrum',
   'dynamics',
+  'report',
   'simulate',
 ];
 

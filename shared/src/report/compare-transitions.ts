@@ -1,5 +1,6 @@
 import { adjoint, complexMatrix, multiplyComplex, type ComplexMatrix } from '../algebra/dense.js';
 import { eigenHermitian } from '../algebra/eigen/hermitian.js';
+import { connected, type Link } from '../dynamics/liouville/fragments.js';
 
 /** How far the lines of one Hamiltonian lie from those of another. */
 export interface TransitionComparison {
@@ -77,15 +78,13 @@ function linesBetween(lower: MatchedLevels, upper: MatchedLevels, lowering: Comp
 /** Smallest sets of basis states that no element of either matrix leaves. */
 function separateSets(a: ComplexMatrix, b: ComplexMatrix): number[][] {
   const n = a.rows;
-  const root = Array.from({ length: n }, (_, k) => k);
-  const find = (k: number): number => (root[k] === k ? k : (root[k] = find(root[k])));
+  const links: Link[] = [];
   for (let p = 0; p < n * n; p++) {
-    if (a.real[p] !== 0 || a.imag[p] !== 0 || b.real[p] !== 0 || b.imag[p] !== 0)
-      root[find(Math.floor(p / n))] = find(p % n);
+    if (a.real[p] !== 0 || a.imag[p] !== 0 || b.real[p] !== 0 || b.imag[p] !== 0) {
+      links.push({ a: Math.floor(p / n), b: p % n });
+    }
   }
-  const sets = new Map<number, number[]>();
-  for (let k = 0; k < n; k++) sets.set(find(k), [...(sets.get(find(k)) ?? []), k]);
-  return [...sets.values()];
+  return connected(n, links);
 }
 
 function block(m: ComplexMatrix, rows: readonly number[], across: readonly number[]): ComplexMatrix {

@@ -1,5 +1,6 @@
 import type { Experiment } from '../documents/experiment.schema.js';
 import type { SpinSystem } from '../documents/system.schema.js';
+import { connected, type Link } from '../dynamics/liouville/fragments.js';
 import { couplingsOf, isDecoupled } from '../interactions/scalar.js';
 import { dipolarCouplingsOf } from '../interactions/tensors.js';
 import { mainState } from './spin-hamiltonian.js';
@@ -9,19 +10,14 @@ import { mainState } from './spin-hamiltonian.js';
  * Dipolar couplings join only where `dipolar` is set.
  */
 export function coupledFragments(system: SpinSystem, experiment: Experiment, dipolar: boolean): SpinSystem[] {
-  const parent = system.nuclei.map((_, row) => row);
-  const root = (row: number): number => (parent[row] === row ? row : root(parent[row]));
-  const bonds: { a: number; b: number }[] = couplingsOf(system, experiment.decouple, mainState(system));
+  const links: Link[] = couplingsOf(system, experiment.decouple, mainState(system));
   if (dipolar) {
     const isotope = (row: number) => system.nuclei[row].isotope;
-    bonds.push(
+    links.push(
       ...dipolarCouplingsOf(system).filter(({ a, b }) => !isDecoupled(isotope(a), isotope(b), experiment.decouple)),
     );
   }
-  for (const { a, b } of bonds) parent[root(a)] = root(b);
-  const parts = new Map<number, number[]>();
-  system.nuclei.forEach((_, row) => parts.set(root(row), [...(parts.get(root(row)) ?? []), row]));
-  return [...parts.values()]
+  return connected(system.nuclei.length, links)
     .map((rows) => subsystem(system, rows))
     .filter(({ nuclei }) => nuclei.some(({ isotope }) => isotope === experiment.observe));
 }
