@@ -92,6 +92,7 @@ describe('the main job', () => {
     await page.keyboard.press('Enter');
     await page.keyboard.press('Control+s');
     await page.waitForURL(/systems\/[0-9a-f-]{36}/);
+    await shownSpectrum(page).waitFor();
     await page.keyboard.press('Control+Enter');
     await page.waitForURL('**/runs/*');
     await page.getByRole('application', { name: /spectrum of By keys/ }).waitFor({ timeout: 60_000 });

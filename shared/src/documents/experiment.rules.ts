@@ -12,9 +12,15 @@ export function checkExperiment(experiment: Experiment): DocumentError[] {
   checkDecoupled(decouple, observe, ['decouple'], refuse);
   const total = Math.max(acquisition.points, processing.zeroFill);
   if (processing.zeroFill > 0 && processing.zeroFill < acquisition.points) {
-    refuse(['processing', 'zeroFill'], `zero filling keeps all ${acquisition.points} points; give 0 or more points than that`);
+    refuse(
+      ['processing', 'zeroFill'],
+      `zero filling keeps all ${acquisition.points} points; give 0 or more points than that`,
+    );
   } else if (total % 2 !== 0) {
-    refuse(processing.zeroFill > 0 ? ['processing', 'zeroFill'] : ['acquisition', 'points'], 'the spectrum needs an even number of points');
+    refuse(
+      processing.zeroFill > 0 ? ['processing', 'zeroFill'] : ['acquisition', 'points'],
+      'the spectrum needs an even number of points',
+    );
   }
   if ('steps' in sequence) checkSteps(sequence, experiment, refuse);
   else if ('from' in sequence && sequence.from === observe) {
@@ -27,7 +33,12 @@ export function checkExperiment(experiment: Experiment): DocumentError[] {
   return errors;
 }
 
-function checkDecoupled(isotopes: readonly string[], observe: string, keys: readonly PropertyKey[], refuse: Refuse): void {
+function checkDecoupled(
+  isotopes: readonly string[],
+  observe: string,
+  keys: readonly PropertyKey[],
+  refuse: Refuse,
+): void {
   isotopes.forEach((isotope, i) => {
     if (isotope === observe) refuse([...keys, i], `the observed isotope can't be decoupled`);
     if (isotopes.indexOf(isotope) < i) refuse([...keys, i], `${isotope} is listed already`);
@@ -52,7 +63,10 @@ function checkSteps(sequence: FreeSequence, experiment: Experiment, refuse: Refu
   const columns = steps.filter((step) => 'pulse' in step).length + 1;
   phaseCycle?.forEach((row, i) => {
     if (row.length !== columns) {
-      refuse(['sequence', 'phaseCycle', i], `a row has one phase for each of the ${columns - 1} pulses and one for the receiver, not ${row.length}`);
+      refuse(
+        ['sequence', 'phaseCycle', i],
+        `a row has one phase for each of the ${columns - 1} pulses and one for the receiver, not ${row.length}`,
+      );
     }
   });
 }

@@ -25,7 +25,10 @@ export const stepSchema = z.union([
   z.strictObject({ acquire: z.strictObject({ phase }) }),
 ]);
 
-const j = z.number().refine((value) => value !== 0, 'a transfer needs a coupling that is not zero').describe('Hz');
+const j = z
+  .number()
+  .refine((value) => value !== 0, 'a transfer needs a coupling that is not zero')
+  .describe('Hz');
 
 export const recipeSchema = z.discriminatedUnion('recipe', [
   z.strictObject({ recipe: z.literal('pulse-acquire'), flip: z.number().default(90) }),

@@ -21,7 +21,11 @@ export function checkPair(system: SpinSystem, experiment: Experiment): PairError
   if ('steps' in sequence) {
     sequence.steps.forEach((step, i) => {
       if ('saturate' in step && !ids.has(step.saturate.nucleus)) {
-        refuse('experiment', ['sequence', 'steps', i, 'saturate', 'nucleus'], `there is no nucleus '${step.saturate.nucleus}'`);
+        refuse(
+          'experiment',
+          ['sequence', 'steps', i, 'saturate', 'nucleus'],
+          `there is no nucleus '${step.saturate.nucleus}'`,
+        );
       }
     });
   } else {
@@ -41,9 +45,14 @@ type Refuse = (where: keyof PairErrors, keys: readonly PropertyKey[], message: s
 
 function checkRedfield(system: SpinSystem, refuse: Refuse): void {
   if (!system.tumbling) refuse('system', ['tumbling', 'tauC'], 'redfield relaxation needs the correlation time');
-  const mechanisms = system.nuclei.some((n) => n.csa || n.quadrupole) || system.couplings.some((c) => c.dipolar !== undefined);
+  const mechanisms =
+    system.nuclei.some((n) => n.csa || n.quadrupole) || system.couplings.some((c) => c.dipolar !== undefined);
   if (!mechanisms) {
-    refuse('system', ['couplings'], 'redfield relaxation needs a dipolar coupling (from positions or given), a shift tensor or a quadrupole');
+    refuse(
+      'system',
+      ['couplings'],
+      'redfield relaxation needs a dipolar coupling (from positions or given), a shift tensor or a quadrupole',
+    );
   }
 }
 
@@ -52,7 +61,11 @@ function checkRandomFields(system: SpinSystem, experiment: Experiment, refuse: R
   system.nuclei.forEach((nucleus, i) => {
     const t2 = nucleus.t2 ?? 1 / (Math.PI * (nucleus.lineWidth ?? experiment.lineWidth));
     if (nucleus.t1 !== undefined && t2 > 2 * nucleus.t1 && nucleus.t2 === undefined) {
-      refuse('system', ['nuclei', i, 't1'], `t2 is 1/(pi lineWidth) = ${+t2.toPrecision(4)} s here, which is more than twice t1`);
+      refuse(
+        'system',
+        ['nuclei', i, 't1'],
+        `t2 is 1/(pi lineWidth) = ${+t2.toPrecision(4)} s here, which is more than twice t1`,
+      );
     }
   });
 }

@@ -45,7 +45,8 @@ function checkNucleus(nucleus: Nucleus, i: number, all: readonly Nucleus[], refu
     refuse(['nuclei', i, 'quadrupole'], `${nucleus.isotope} has spin 1/2 and no quadrupole moment`);
   }
   if (nucleus.count > 1 && nucleus.csa) refuse(['nuclei', i, 'csa'], 'a group of equivalent nuclei takes no tensor');
-  if (nucleus.count > 1 && nucleus.quadrupole) refuse(['nuclei', i, 'quadrupole'], 'a group of equivalent nuclei takes no tensor');
+  if (nucleus.count > 1 && nucleus.quadrupole)
+    refuse(['nuclei', i, 'quadrupole'], 'a group of equivalent nuclei takes no tensor');
   if (nucleus.t1 !== undefined && nucleus.t2 !== undefined && nucleus.t2 > 2 * nucleus.t1) {
     refuse(['nuclei', i, 't2'], 't2 is at most twice t1');
   }
@@ -116,10 +117,12 @@ function checkExchange(system: SpinSystem, refuse: Refuse): void {
     }
     if (step.from === step.to) refuse(['exchange', i, 'to'], 'exchange joins two different states');
     if (step.rate === undefined && !step.eyring) refuse(['exchange', i, 'rate'], 'give a rate or Eyring parameters');
-    if (step.rate !== undefined && step.eyring) refuse(['exchange', i, 'rate'], 'give a rate or Eyring parameters, not both');
+    if (step.rate !== undefined && step.eyring)
+      refuse(['exchange', i, 'rate'], 'give a rate or Eyring parameters, not both');
   });
   requireUnique(
     steps.map((step) => sortedPair(step.from, step.to)),
-    (i) => refuse(['exchange', i], 'this pair of states is listed already; the backward rate follows from the populations'),
+    (i) =>
+      refuse(['exchange', i], 'this pair of states is listed already; the backward rate follows from the populations'),
   );
 }

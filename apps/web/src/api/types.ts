@@ -9,9 +9,7 @@ export type System = Schemas['SystemDto'];
 export type Run = Schemas['RunDto'];
 export type RunState = Run['state'];
 export type Member = Schemas['MemberDto'];
-export type Invitation = Schemas['InvitationDto'];
 export type Token = Schemas['TokenDto'];
-export type SignedInSession = Schemas['SessionInfoDto'];
 
 /** One page of a list; `nextCursor` fetches the next one. */
 export interface Page<T> {

@@ -38,8 +38,4 @@ export const SharedIcon = icon(
 export const PrivateIcon = icon(<path d="M3.5 7h9v6.5h-9zM5.3 7V5a2.7 2.7 0 0 1 5.4 0v2" />);
 export const MoreIcon = icon(<path d="M3 8h.01M8 8h.01M13 8h.01" strokeWidth={2.4} />);
 export const MenuIcon = icon(<path d="M2 4.5h12M2 8h12M2 11.5h12" />);
-export const SunIcon = icon(
-  <path d="M8 11a3 3 0 1 0 0-6a3 3 0 0 0 0 6zM8 1v1.5M8 13.5V15M1 8h1.5M13.5 8H15M3 3l1.1 1.1M11.9 11.9L13 13M3 13l1.1-1.1M11.9 4.1L13 3" />,
-);
-export const MoonIcon = icon(<path d="M13.5 9.8A6 6 0 0 1 6.2 2.5a6 6 0 1 0 7.3 7.3z" />);
 export const ChevronDownIcon = icon(<path d="M4 6l4 4l4-4" />);

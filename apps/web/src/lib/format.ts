@@ -28,7 +28,3 @@ export function formatSeconds(seconds: number): string {
   if (seconds < 60) return `${seconds.toPrecision(2)} s`;
   return `${Math.floor(seconds / 60)} min ${Math.round(seconds % 60)} s`;
 }
-
-export function formatCount(count: number, one: string, many = `${one}s`): string {
-  return `${count} ${count === 1 ? one : many}`;
-}

@@ -76,12 +76,13 @@ export function Grid(props: GridProps) {
     setAt(place);
     onSelect?.(rows[place.row] ?? null);
   };
-  // The cell may exist only after the edit that leads to it has been drawn.
   const focus = (place: Place) => {
     arrive(place);
-    requestAnimationFrame(() =>
-      table.current?.querySelector<HTMLElement>(`[data-place="${placeName(id, place)}"]`)?.focus(),
-    );
+    const find = () => table.current?.querySelector<HTMLElement>(`[data-place="${placeName(id, place)}"]`);
+    // At once where the cell is there, so that fast keys find it; a cell that the edit has yet to make is drawn first.
+    const cell = find();
+    if (cell) cell.focus();
+    else requestAnimationFrame(() => find()?.focus());
   };
   const begin = (place: Place, text = textAt(place)) => {
     if (readOnly || isLocked(place)) return;

@@ -1,4 +1,4 @@
-import { isBlankRow, newRow, type Draft, type Row } from './draft';
+import { newRow, type Draft, type Row } from './draft';
 import type { TableName } from './fields';
 
 /** Every edit takes a draft and gives the draft after it; an edit that changes nothing gives the same object. */
@@ -89,13 +89,6 @@ export function findPair(draft: Draft, a: string, b: string): Row | undefined {
     const [first, second] = ends(row, 'between.0', 'between.1');
     return (first === a && second === b) || (first === b && second === a);
   });
-}
-
-/** Drops the blank rows at the end of a table, which only wait for typing. */
-export function withoutBlankTail(rows: readonly Row[]): readonly Row[] {
-  let end = rows.length;
-  while (end > 0 && isBlankRow(rows[end - 1])) end -= 1;
-  return end === rows.length ? rows : rows.slice(0, end);
 }
 
 function ends(row: Row, a: string, b: string): string[] {

@@ -36,10 +36,6 @@ export function clampRange(range: Range, full: Range): Range {
   return { high, low: high - width };
 }
 
-export function sameRange(a: Range | null, b: Range | null): boolean {
-  return a === b || (a !== null && b !== null && a.high === b.high && a.low === b.low);
-}
-
 /** ppm of point `index`. */
 export function ppmAt(spectrum: Spectrum, index: number): number {
   return spectrum.firstPpm + (index * (spectrum.lastPpm - spectrum.firstPpm)) / (spectrum.real.length - 1);
@@ -48,14 +44,4 @@ export function ppmAt(spectrum: Spectrum, index: number): number {
 /** Fractional index of `ppm`, not clamped. */
 export function indexAt(spectrum: Spectrum, ppm: number): number {
   return ((ppm - spectrum.firstPpm) / (spectrum.lastPpm - spectrum.firstPpm)) * (spectrum.real.length - 1);
-}
-
-/** Largest and smallest value of a spectrum's real part. */
-export function extremes(values: Float64Array): { least: number; most: number } {
-  let [least, most] = [Infinity, -Infinity];
-  for (const value of values) {
-    if (value < least) least = value;
-    if (value > most) most = value;
-  }
-  return values.length > 0 ? { least, most } : { least: 0, most: 0 };
 }
