@@ -11,6 +11,7 @@ import { InvitationsModule } from './invitations/invitations.module.js';
 import { LabsModule } from './labs/labs.module.js';
 import { MailModule } from './mail/mail.module.js';
 import { MembersModule } from './members/members.module.js';
+import { BriefsModule } from './briefs/briefs.module.js';
 import { DemoModule } from './demo/demo.module.js';
 import { EventsModule } from './events/events.module.js';
 import { NuclidesModule } from './nuclides/nuclides.module.js';
@@ -43,6 +44,7 @@ import { PolicyModule } from './policy/policy.module.js';
     NuclidesModule,
     SystemsModule,
     RunsModule,
+    BriefsModule,
     TodayModule,
     DemoModule,
     HealthModule,

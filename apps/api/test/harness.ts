@@ -118,3 +118,17 @@ export const experiment = (protonMHz = 400, points = 1024) => ({
   observe: '1H',
   acquisition: { centre: 3.5, width: 2000, points },
 });
+
+type Done = (error: Error | null, body: unknown) => void;
+
+/** For supertest's `parse`: the body as text, and as bytes. */
+export function asText(response: unknown, done: Done): void {
+  asBytes(response, (error, body) => done(error, (body as Buffer).toString()));
+}
+
+export function asBytes(response: unknown, done: Done): void {
+  const stream = response as NodeJS.ReadableStream;
+  const chunks: Buffer[] = [];
+  stream.on('data', (chunk: Buffer) => chunks.push(chunk));
+  stream.on('end', () => done(null, Buffer.concat(chunks)));
+}

@@ -4,7 +4,16 @@ import { convert } from 'jcampconverter';
 import { DataSource } from 'typeorm';
 import { RunEntity } from '../src/runs/run.entity.js';
 import { NEXT, RUN_STATES, statesBefore } from '../src/runs/run.states.js';
-import { eventually, experiment, startHarness, system, type Browser, type Harness } from './harness.js';
+import {
+  asBytes,
+  asText,
+  eventually,
+  experiment,
+  startHarness,
+  system,
+  type Browser,
+  type Harness,
+} from './harness.js';
 
 let harness: Harness;
 let owner: Browser;
@@ -169,16 +178,3 @@ it('tells what happens to runs over the event stream', async () => {
   expect(seen.join('')).toContain(made.body.id);
   stream.destroy();
 });
-
-type Done = (error: Error | null, body: unknown) => void;
-
-function asText(response: unknown, done: Done): void {
-  asBytes(response, (error, body) => done(error, (body as Buffer).toString()));
-}
-
-function asBytes(response: unknown, done: Done): void {
-  const stream = response as NodeJS.ReadableStream;
-  const chunks: Buffer[] = [];
-  stream.on('data', (chunk: Buffer) => chunks.push(chunk));
-  stream.on('end', () => done(null, Buffer.concat(chunks)));
-}

@@ -71,6 +71,12 @@ function RunHeader({ labId, run }: { labId: string; run: Run }) {
       </div>
       {run.state === 'done' && (
         <Group gap="xs">
+          <Button component="a" href={`${base}/brief.pdf`} download>
+            Brief
+          </Button>
+          <Button component="a" variant="default" href={`${base}/package.eln`} download>
+            Package
+          </Button>
           <Button component="a" variant="default" href={`${base}/result.jdx`} download>
             JCAMP-DX
           </Button>
