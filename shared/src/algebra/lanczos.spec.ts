@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { complexMatrix } from './dense.js';
 import { spectralMeasure } from './eigen/complex-tridiagonal.js';
 import { expmDense } from './expm-dense.js';
-import { lanczosSignal } from './lanczos.js';
+import { lanczosAction, lanczosSignal } from './lanczos.js';
 import { SparseComplexBuilder, type SparseComplex } from './sparse.js';
 
 /** A full complex symmetric matrix like those of spin dynamics: oscillations along the imaginary axis, decays to the left. */
@@ -109,6 +109,34 @@ describe('lanczosSignal', () => {
     // p + v = (1 + i, 1 - i): its product with itself is 0.
     const v = { real: new Float64Array(2), imag: Float64Array.of(1, -1) };
     expect(lanczosSignal(a, Float64Array.of(1, 1), v, { dwell: 0.1, points: 2 }, { products: 0 })).toBeNull();
+  });
+});
+
+describe('lanczosAction', () => {
+  it('is exp(A t) v', () => {
+    fc.assert(
+      fc.property(fc.integer({ min: 1, max: 16 }), fc.integer({ min: 1, max: 1e6 }), (size, seed) => {
+        const a = symmetricMatrix(size, seed, 1);
+        const random = generator(seed + 2);
+        const v = {
+          real: Float64Array.from({ length: size }, random),
+          imag: Float64Array.from({ length: size }, random),
+        };
+        const t = 0.7;
+        const found = lanczosAction(
+          a,
+          v,
+          (re, im) => [Math.exp(re * t) * Math.cos(im * t), Math.exp(re * t) * Math.sin(im * t)],
+          { products: 0 },
+        )!;
+        for (let k = 0; k < size; k++) {
+          const unit = Float64Array.from({ length: size }, (_, i) => (i === k ? 1 : 0));
+          const [re, im] = dense(a, unit, v, t);
+          expect(Math.hypot(found.real[k] - re, found.imag[k] - im)).toBeLessThan(1e-8 * size);
+        }
+      }),
+      { numRuns: 40 },
+    );
   });
 });
 

@@ -1,13 +1,14 @@
 import type { ComplexArray } from '../run/solved.js';
-import { spectralMeasure, type SpectralMeasure } from './eigen/complex-tridiagonal.js';
+import { Rotations, spectralMeasure, type SpectralMeasure } from './eigen/complex-tridiagonal.js';
 import { withKernels, type Kernels, type KernelWorkspace, type Slab } from './kernels/kernels.js';
+import { OrthogonalityLoss } from './orthogonality-loss.js';
 import { applySparseInto, type SparseComplex } from './sparse.js';
 
 /**
  * Signals p^T exp(A t) v of a large sparse complex symmetric A by Lanczos recursion with the product x^T y (G. Moro and J. H.
  * Freed, J. Chem. Phys. 74 (1981) 3757): A Q = Q T with T tridiagonal and Q^T Q = 1, so that q^T exp(A t) q = e1^T exp(T t) e1 for
- * all times at once. The vectors are kept orthogonal to all before
- * them, so that the recursion ends with the size of A at the latest.
+ * all times at once. The vectors are kept orthogonal to all before them, to the root of rounding or better, which leaves T exact
+ * (H. D. Simon, Math. Comput. 42 (1984) 115), so that the recursion ends with the size of A at the latest.
  */
 export interface Sampling {
   readonly dwell: number;
@@ -16,14 +17,8 @@ export interface Sampling {
 
 /** x^T x below this part of |x|^2 has lost its figures. */
 const BREAKDOWN = 1e-10;
-/**
- * Orthogonality to about the square root of rounding is enough (H. D. Simon, Math. Comput. 42 (1984) 115): overlaps below ROUNDING
- * beside |A q| stay, and above MOST_OVERLAP every vector is looked at from then on.
- */
-const ROUNDING = 1e-13;
-const MOST_OVERLAP = 1e-10;
-/** Steps without a look at the older vectors. Found by trial; not derived. */
-const LONGEST_PAUSE = 4;
+/** Overlaps above this are taken off; a tenth of the root of rounding. */
+const MOST_OVERLAP = 1e-9;
 /** A new direction this short beside A q is rounding. */
 const CLOSED = 1e-13;
 /** Weights below this part of the whole are left out. */
@@ -64,6 +59,36 @@ export function lanczosSignal(
   return out;
 }
 
+/** A function of an eigenvalue, and its value as [real, imaginary]. */
+export type EigenFunction = (real: number, imag: number) => [number, number];
+
+/** f(A) v of a complex symmetric A: Q X f X^T e1 from the recursion; null where it breaks down. Real and imaginary part apart. */
+export function lanczosAction(
+  a: SparseComplex,
+  v: ComplexArray,
+  f: EigenFunction,
+  counts: { products: number },
+  onStep: (fraction: number) => void = () => undefined,
+): ComplexArray | null {
+  const out = complexArray(a.size);
+  for (const part of ['real', 'imag'] as const) {
+    const start = { real: v[part], imag: new Float64Array(a.size) };
+    const size = length(start);
+    if (size === 0) continue;
+    const turned = withKernels(2 * a.size * (a.size + 6), (workspace) => {
+      const recursion = new Recursion(a, start, [size, 0], workspace);
+      recursion.complete(counts, onStep);
+      return recursion.apply(f);
+    });
+    if (!turned) return null;
+    for (let k = 0; k < a.size; k++) {
+      out.real[k] += part === 'real' ? size * turned.real[k] : -size * turned.imag[k];
+      out.imag[k] += part === 'real' ? size * turned.imag[k] : size * turned.real[k];
+    }
+  }
+  return out;
+}
+
 /** r with v = r p, if there is one. */
 function ratioOf({ real, imag }: ComplexArray, p: Float64Array): [number, number] | null {
   let [re, im, size, norm] = [0, 0, 0, 0];
@@ -91,11 +116,7 @@ function wholeMeasure(
   const n = a.size;
   const found = withKernels(2 * n * (n + 6), (workspace) => {
     const recursion = new Recursion(a, start, squareRoot(weight), workspace);
-    while (recursion.state === 'running') {
-      recursion.advance();
-      counts.products++;
-      onStep((recursion.steps / n) ** 2);
-    }
+    recursion.complete(counts, onStep);
     return recursion.measure();
   });
   if (!found) return null;
@@ -123,10 +144,9 @@ class Recursion {
   private readonly real: Slab;
   private readonly imag: Slab;
   private readonly kernels: Kernels;
-  /** Steps to go without looking at the older vectors, steps between two looks, and whether a look is the second of two. */
-  private rest = 0;
-  private pause = 2;
-  private second = false;
+  private readonly loss: OrthogonalityLoss;
+  /** Vectors still to be made orthogonal: two in a row, as each follows from the two before it. */
+  private restoring = 0;
 
   constructor(
     private readonly a: SparseComplex,
@@ -143,10 +163,20 @@ class Recursion {
     this.next = split(take(2 * n), n);
     this.diagonal = complexArray(n);
     this.beside = complexArray(n);
+    this.loss = new OrthogonalityLoss(n);
     divideInto(this.vector(0), start, norm);
   }
 
-  advance(): void {
+  /** Runs until the space is closed or the recursion breaks down. */
+  complete(counts: { products: number }, onStep: (fraction: number) => void): void {
+    while (this.state === 'running') {
+      this.advance();
+      counts.products++;
+      onStep((this.steps / this.n) ** 2);
+    }
+  }
+
+  private advance(): void {
     const { a, steps, next, n } = this;
     const current = this.vector(steps);
     applySparseInto(next, a, current);
@@ -156,10 +186,9 @@ class Recursion {
       const q = this.vector(k);
       subtract(next, q, ...product(q, next));
     }
-    this.keepOrthogonal(size);
+    const square = this.keepOrthogonal();
     this.steps++;
     const rest = length(next);
-    const square = selfProduct(next);
     if (rest <= CLOSED * size || this.steps === n) this.state = 'closed';
     else if (!(Math.hypot(...square) > BREAKDOWN * rest * rest)) this.state = 'broken';
     else {
@@ -173,28 +202,45 @@ class Recursion {
     return this.state === 'broken' ? null : spectralMeasure(this.steps, this.diagonal, this.beside);
   }
 
+  /** f(A) of the first vector. */
+  apply(f: EigenFunction): ComplexArray | null {
+    if (this.state === 'broken') return null;
+    const rotations = new Rotations();
+    const found = spectralMeasure(this.steps, this.diagonal, this.beside, rotations);
+    if (!found) return null;
+    const [real, imag] = [found.rowReal, found.rowImag];
+    for (let k = 0; k < this.steps; k++) {
+      const [fr, fi] = f(found.real[k], found.imag[k]);
+      const re = real[k];
+      real[k] = fr * re - fi * imag[k];
+      imag[k] = fr * imag[k] + fi * re;
+    }
+    rotations.apply(real, imag);
+    const out = complexArray(this.n);
+    for (let k = 0; k < this.steps; k++) subtract(out, this.vector(k), -real[k], -imag[k]);
+    return out;
+  }
+
   private vector(k: number): ComplexArray {
     const first = 2 * this.n * k;
     const { data } = this.basis;
     return { real: data.subarray(first, first + this.n), imag: data.subarray(first + this.n, first + 2 * this.n) };
   }
 
-  /** Makes two vectors in a row orthogonal to all older ones, then rests for as long as little grows meanwhile. */
-  private keepOrthogonal(size: number): void {
-    if (this.rest > 0) {
-      this.rest--;
-      return;
-    }
-    const overlap = this.removeOlder(this.steps - 1, ROUNDING * size) / size;
-    if (this.second) this.rest = this.pause;
-    else if (overlap > MOST_OVERLAP) this.pause = 0;
-    else if (overlap < ROUNDING) this.pause = Math.min(LONGEST_PAUSE, this.pause + 1);
-    this.second = !this.second;
+  /** Makes the next vector orthogonal to all before it when that is due; gives its product with itself. */
+  private keepOrthogonal(): [number, number] {
+    const { steps, next, diagonal, beside, loss } = this;
+    const square = selfProduct(next);
+    if (loss.advance(steps, diagonal, beside, squareRoot(square)) > MOST_OVERLAP) this.restoring = 2;
+    if (this.restoring === 0) return square;
+    this.restoring--;
+    this.removeOlder(steps + 1);
+    loss.restored(steps + 1);
+    return selfProduct(next);
   }
 
-  /** Takes off what rounding has put along basis vectors 0..count-1, where any of that is more than `least`; gives the largest part. */
-  private removeOlder(count: number, least: number): number {
-    if (count <= 0) return 0;
+  /** Takes off what rounding has put along basis vectors 0..count-1. */
+  private removeOlder(count: number): void {
     const { kernels, n, basis, next, forReal, forImag, real, imag } = this;
     // Re q^T w = (qr, qi).(wr, -wi) and Im q^T w = (qr, qi).(wi, wr)
     forReal.data.set(next.real);
@@ -203,12 +249,7 @@ class Recursion {
     forImag.data.set(next.real, n);
     kernels.dotRows(count, 2 * n, basis.at, 16 * n, forReal.at, real.at);
     kernels.dotRows(count, 2 * n, basis.at, 16 * n, forImag.at, imag.at);
-    let largest = 0;
-    for (let k = 0; k < count; k++) {
-      largest = Math.max(largest, Math.abs(real.data[k]), Math.abs(imag.data[k]));
-      real.data[k] = -real.data[k];
-    }
-    if (largest <= least) return largest;
+    kernels.scale(count, -1, real.at);
     // w -= (hr + i hi)(qr + i qi): the real factors go straight onto w, the imaginary ones by way of scratch.
     kernels.addRows(count, 2 * n, basis.at, 16 * n, real.at, next.at);
     forReal.data.fill(0);
@@ -217,7 +258,6 @@ class Recursion {
       next.real[k] += forReal.data[n + k];
       next.imag[k] -= forReal.data[k];
     }
-    return largest;
   }
 }
 

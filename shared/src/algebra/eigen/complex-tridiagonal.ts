@@ -10,6 +10,44 @@ export interface SpectralMeasure {
   /** e1^T f(T) e1 = sum of weight times f(value). */
   readonly weightReal: Float64Array;
   readonly weightImag: Float64Array;
+  /** First row of X, whose squares the weights are. */
+  readonly rowReal: Float64Array;
+  readonly rowImag: Float64Array;
+}
+
+/** The rotations that made X = G1 G2 ..., in that order: rotation k turns rows `row` and `row + 1`, four numbers each in `values`. */
+export class Rotations {
+  private rows = new Uint32Array(1024);
+  private values = new Float64Array(4096);
+  private count = 0;
+
+  push(row: number, cosineReal: number, cosineImag: number, sineReal: number, sineImag: number): void {
+    if (this.count === this.rows.length) {
+      const [rows, values] = [new Uint32Array(2 * this.count), new Float64Array(8 * this.count)];
+      rows.set(this.rows);
+      values.set(this.values);
+      [this.rows, this.values] = [rows, values];
+    }
+    this.rows[this.count] = row;
+    const at = 4 * this.count++;
+    this.values[at] = cosineReal;
+    this.values[at + 1] = cosineImag;
+    this.values[at + 2] = sineReal;
+    this.values[at + 3] = sineImag;
+  }
+
+  /** u <- X u */
+  apply(real: Float64Array, imag: Float64Array): void {
+    for (let k = this.count - 1; k >= 0; k--) {
+      const i = this.rows[k];
+      const [cr, ci, sr, si] = this.values.subarray(4 * k, 4 * k + 4);
+      const [xr, xi, yr, yi] = [real[i], imag[i], real[i + 1], imag[i + 1]];
+      real[i] = cr * xr - ci * xi + sr * yr - si * yi;
+      imag[i] = cr * xi + ci * xr + sr * yi + si * yr;
+      real[i + 1] = cr * yr - ci * yi - sr * xr + si * xi;
+      imag[i + 1] = cr * yi + ci * yr - sr * xi - si * xr;
+    }
+  }
 }
 
 const ROUNDING = 2 ** -52;
@@ -17,11 +55,12 @@ const ROUNDING = 2 ** -52;
 const BREAKDOWN = 1e-8;
 const MOST_SWEEPS = 60;
 
-/** Diagonal `d` (m) and off-diagonal `e` (at least m - 1) are left as they are. */
+/** Diagonal `d` (m) and off-diagonal `e` (at least m - 1) are left as they are; `rotations` collects what makes X. */
 export function spectralMeasure(
   m: number,
   d: { readonly real: Float64Array; readonly imag: Float64Array },
   e: { readonly real: Float64Array; readonly imag: Float64Array },
+  rotations?: Rotations,
 ): SpectralMeasure | null {
   const [dr, di] = [d.real.slice(0, m), d.imag.slice(0, m)];
   const [er, ei] = [new Float64Array(m), new Float64Array(m)];
@@ -33,7 +72,7 @@ export function spectralMeasure(
     for (let sweep = 0; ; sweep++) {
       const last = endOfBlock(l, m, dr, di, er, ei);
       if (last === l) break;
-      if (sweep === MOST_SWEEPS || !qlSweep(l, last, dr, di, er, ei, zr, zi)) return null;
+      if (sweep === MOST_SWEEPS || !qlSweep(l, last, dr, di, er, ei, zr, zi, rotations)) return null;
     }
   }
   const [weightReal, weightImag] = [new Float64Array(m), new Float64Array(m)];
@@ -41,7 +80,7 @@ export function spectralMeasure(
     weightReal[k] = zr[k] * zr[k] - zi[k] * zi[k];
     weightImag[k] = 2 * zr[k] * zi[k];
   }
-  return { real: dr, imag: di, weightReal, weightImag };
+  return { real: dr, imag: di, weightReal, weightImag, rowReal: zr, rowImag: zi };
 }
 
 /** First row from l on whose off-diagonal element is rounding. */
@@ -72,6 +111,7 @@ function qlSweep(
   ei: Float64Array,
   zr: Float64Array,
   zi: Float64Array,
+  rotations?: Rotations,
 ): boolean {
   // Shift: the eigenvalue of the leading 2 x 2 block next to d_l.
   const root = { re: 0, im: 0 };
@@ -111,6 +151,7 @@ function qlSweep(
     di[i + 1] = gi + pi;
     gr = cr * tr - ci * ti - br;
     gi = cr * ti + ci * tr - bi;
+    rotations?.push(i, cr, ci, sr, si);
     const [hr, hi, kr, ki] = [zr[i + 1], zi[i + 1], zr[i], zi[i]];
     zr[i + 1] = sr * kr - si * ki + cr * hr - ci * hi;
     zi[i + 1] = sr * ki + si * kr + cr * hi + ci * hr;
