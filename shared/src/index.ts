@@ -29,6 +29,7 @@ export * from './orientations/rotation-series.js';
 export * from './planning/discrimination.js';
 export * from './planning/ernst-angle.js';
 export * from './planning/sensitivity.js';
+export * from './planning/series.js';
 export * from './report/left-out.js';
 export * from './run/context.js';
 export * from './run/solved.js';

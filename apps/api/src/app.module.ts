@@ -12,6 +12,7 @@ import { LabsModule } from './labs/labs.module.js';
 import { MailModule } from './mail/mail.module.js';
 import { MembersModule } from './members/members.module.js';
 import { BriefsModule } from './briefs/briefs.module.js';
+import { SeriesModule } from './series/series.module.js';
 import { DemoModule } from './demo/demo.module.js';
 import { EventsModule } from './events/events.module.js';
 import { NuclidesModule } from './nuclides/nuclides.module.js';
@@ -45,6 +46,7 @@ import { PolicyModule } from './policy/policy.module.js';
     SystemsModule,
     RunsModule,
     BriefsModule,
+    SeriesModule,
     TodayModule,
     DemoModule,
     HealthModule,

@@ -9,9 +9,11 @@ import { Lab } from '../labs/lab.entity.js';
 import { Membership } from '../members/membership.entity.js';
 import { ResultEntity } from '../results/result.entity.js';
 import { RunEntity } from '../runs/run.entity.js';
+import { SeriesEntity } from '../series/series.entity.js';
 import { RevisionEntity } from '../systems/revision.entity.js';
 import { SystemEntity } from '../systems/system.entity.js';
 import { Bench1764560100000 } from './migrations/1764560100000-bench.js';
+import { Series1764560200000 } from './migrations/1764560200000-series.js';
 import { People1764560000000 } from './migrations/1764560000000-people.js';
 
 export function dataSourceOptions(url: string): DataSourceOptions {
@@ -30,8 +32,9 @@ export function dataSourceOptions(url: string): DataSourceOptions {
       RevisionEntity,
       RunEntity,
       ResultEntity,
+      SeriesEntity,
     ],
-    migrations: [People1764560000000, Bench1764560100000],
+    migrations: [People1764560000000, Bench1764560100000, Series1764560200000],
     migrationsRun: true,
     synchronize: false,
     timezone: 'Z',

@@ -44,10 +44,6 @@ export class RunEntity {
   @Column({ type: 'varchar', length: 140, nullable: true, unique: true })
   requestKey: string | null;
 
-  @Index()
-  @Column({ type: 'uuid', nullable: true })
-  seriesId: string | null;
-
   @Column({ type: 'varchar', length: 20, default: 'queued' })
   state: RunState;
 

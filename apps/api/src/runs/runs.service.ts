@@ -1,7 +1,15 @@
 import { createHash } from 'node:crypto';
 import { HttpStatus, Injectable } from '@nestjs/common';
 import { InjectDataSource, InjectRepository } from '@nestjs/typeorm';
-import { ENGINE_VERSION, estimateCost, parseExperiment, parseSystem, requirePair } from '@heddle/shared';
+import {
+  ENGINE_VERSION,
+  estimateCost,
+  parseExperiment,
+  parseSystem,
+  requirePair,
+  type Experiment,
+  type SpinSystem,
+} from '@heddle/shared';
 import { DataSource, Repository, type SelectQueryBuilder } from 'typeorm';
 import { PeopleService } from '../account/people.service.js';
 import { page, type Paged } from '../common/paging.js';
@@ -24,6 +32,14 @@ import {
 } from './runs.dto.js';
 
 const wrongState = (detail: string) => new Problem(HttpStatus.CONFLICT, 'wrong-state', detail);
+
+/** What is to be run. `system` is the revision's document, or that with one value varied. */
+export interface RunOrder {
+  systemId: string;
+  revision: number;
+  system: SpinSystem;
+  experiment: Experiment;
+}
 
 @Injectable()
 export class RunsService {
@@ -51,31 +67,40 @@ export class RunsService {
    * the same call twice makes one run.
    */
   async create(context: LabContext, body: NewRunDto, key?: string): Promise<RunDto> {
-    const { labId, userId } = context;
-    const system = await this.systems.requireVisible(context, body.systemId);
-    const revision = await this.systems.requireRevision(system.id, body.revision);
+    const { systemId, revision } = body;
+    await this.systems.requireVisible(context, systemId);
+    const system = parseSystem((await this.systems.requireRevision(systemId, revision)).document);
     const experiment = parseExperiment(body.experiment);
-    const document = parseSystem(revision.document);
-    requirePair(document, experiment);
+    const { run, identical } = await this.queue(context, { systemId, revision, system, experiment }, key);
+    const dto = await this.toDto(run);
+    return identical ? { ...dto, identical } : dto;
+  }
+
+  /** Queues a pair of documents that stands on a revision, which the asker was found to see. */
+  async queue(context: LabContext, order: RunOrder, key?: string): Promise<{ run: RunEntity; identical: boolean }> {
+    const { labId, userId } = context;
+    const { systemId, revision, system, experiment } = order;
+    requirePair(system, experiment);
     const requestKey = key ? `${userId}:${hash(key)}` : null;
-    const identity = hash(JSON.stringify([system.id, revision.number, experiment, ENGINE_VERSION]));
+    const identity = hash(JSON.stringify([systemId, revision, system, experiment, ENGINE_VERSION]));
     const offered = await this.findSame(labId, identity, requestKey);
-    if (offered) return { ...(await this.toDto(offered)), identical: true };
-    const run = this.runs.create({
-      labId,
-      ownerId: userId,
-      systemId: system.id,
-      revision: revision.number,
-      systemName: document.name,
-      system: document,
-      experiment,
-      engine: ENGINE_VERSION,
-      identity,
-      requestKey,
-    });
-    const { id } = await this.runs.save(run);
+    if (offered) return { run: offered, identical: true };
+    const { id } = await this.runs.save(
+      this.runs.create({
+        labId,
+        ownerId: userId,
+        systemId,
+        revision,
+        systemName: system.name,
+        system,
+        experiment,
+        engine: ENGINE_VERSION,
+        identity,
+        requestKey,
+      }),
+    );
     this.jobs.wake();
-    return this.toDto(await this.runs.findOneByOrFail({ id }));
+    return { run: await this.runs.findOneByOrFail({ id }), identical: false };
   }
 
   async read(context: LabContext, id: string): Promise<RunDto> {
