@@ -2,11 +2,9 @@ import { z } from 'zod';
 import { isIsotope } from '../nuclides/nuclides.js';
 import { LIMITS } from './limits.js';
 
-export const isotopeSchema = z
-  .string()
-  .refine(isIsotope, {
-    error: (issue) => `'${String(issue.input)}' is not an NMR-active nuclide of the table; write it like 13C`,
-  });
+export const isotopeSchema = z.string().refine(isIsotope, {
+  error: (issue) => `'${String(issue.input)}' is not an NMR-active nuclide of the table; write it like 13C`,
+});
 
 const ID_RULE = "an id starts with a letter and holds at most 16 letters, digits, ', _ or -";
 export const idSchema = z.string().regex(/^[A-Za-z][A-Za-z0-9'_-]{0,15}$/, ID_RULE);
