@@ -18,10 +18,14 @@ export interface LiouvilleCost {
   detected: number;
 }
 
-/** Bytes kept for each element of rho, and for each detected coherence: its row of the generator, or its stick. Counted from the code. */
+/**
+ * Bytes kept for each element of rho, for each detected coherence (its row of the generator, or its stick), and for each element of
+ * the vectors of a Lanczos recursion. Counted from the code.
+ */
 const ELEMENT_BYTES = 48;
 const ROW_BYTES = 1200;
 const STICK_BYTES = 100;
+const VECTOR_BYTES = 16;
 /**
  * Seconds: for each coherence and radian in Krylov steps, for each element of rho and step, for each cubed size of a group of
  * states once and in a step, and for each stick. Measured; not derived.
@@ -49,7 +53,8 @@ export function liouvilleCost(system: SpinSystem, experiment: Experiment): Liouv
     const { basis, detected } = sizes;
     const radiansPerSecond = 2 * Math.PI * rows.reduce((sum, row) => sum + Math.abs(offsets[row]), 0);
     const open = isOpen(system, experiment, rows);
-    const bytes = ELEMENT_BYTES * states * basis ** 2 + (open ? ROW_BYTES : STICK_BYTES) * detected;
+    const vectors = open && sizes.largest <= MOST_LANCZOS ? VECTOR_BYTES * sizes.largest ** 2 : 0;
+    const bytes = ELEMENT_BYTES * states * basis ** 2 + (open ? ROW_BYTES : STICK_BYTES) * detected + vectors;
     cost.bytes = Math.max(cost.bytes, bytes);
     cost.seconds +=
       steps.length * ELEMENT_SECONDS * states * basis ** 2 +
@@ -127,7 +132,8 @@ function openSeconds(
   return sum(
     steps.map((step) => {
       if ('acquire' in step) return Math.min(krylov(detected, acquisition.points / acquisition.width), recursions);
-      if ('delay' in step) return Math.min(krylov(detected, step.delay), 2 * recursions);
+      // Orders -1 and 1, real and imaginary parts.
+      if ('delay' in step) return Math.min(krylov(2 * detected, step.delay), 4 * recursions);
       if ('saturate' in step) return Math.min(krylov(whole, step.saturate.seconds), driven);
       if ('pulse' in step && step.pulse.seconds) return Math.min(krylov(whole, step.pulse.seconds), driven);
       return 0;
