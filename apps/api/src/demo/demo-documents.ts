@@ -1,4 +1,4 @@
-import type { ExperimentInput, SpinSystemInput } from '@heddle/shared';
+import type { ExperimentInput, SpinSystemInput, Variation } from '@heddle/shared';
 
 /** A system of the demonstration lab with the experiments that are run on it. Compounds and numbers are invented. */
 export interface DemoSystem {
@@ -320,5 +320,34 @@ export const DEMO_SYSTEMS: readonly DemoSystem[] = [
         processing: { zeroFill: 8192 },
       },
     ],
+  },
+];
+
+/** Series of the demonstration lab; `of` is the name of the system. */
+export const DEMO_SERIES: readonly {
+  of: string;
+  name: string;
+  experiment: Omit<ExperimentInput, 'format'>;
+  vary: Variation & { values: number[] };
+}[] = [
+  {
+    of: 'Rowan amide, two sites',
+    name: 'Coalescence over temperature',
+    experiment: { ...proton(400.13, 2.9, 400, 4096), name: '1H over temperature' },
+    vary: { quantity: 'temperature', values: [280, 300, 310, 320, 330, 340, 350, 360, 380, 400] },
+  },
+  {
+    of: 'Basalt carbonyl, static tensor',
+    name: 'Sidebands over spinning rate',
+    experiment: {
+      name: '13C, spinning',
+      protonMHz: 400.13,
+      observe: '13C',
+      sample: { kind: 'spinning', rateHz: 2000, orientations: 400 },
+      lineWidth: 60,
+      acquisition: { centre: 171, width: 40000, points: 4096 },
+      processing: { zeroFill: 8192 },
+    },
+    vary: { quantity: 'spinning', values: [1000, 2000, 4000, 8000, 16000] },
   },
 ];

@@ -14,7 +14,8 @@ import type { LabContext } from '../policy/lab.guard.js';
 import { ROLES, type Role } from '../policy/policy.js';
 import { RunsService } from '../runs/runs.service.js';
 import { SystemsService } from '../systems/systems.service.js';
-import { DEMO_SYSTEMS } from './demo-documents.js';
+import { SeriesService } from '../series/series.service.js';
+import { DEMO_SERIES, DEMO_SYSTEMS } from './demo-documents.js';
 
 const LAB = 'Saltmarsh Spin Laboratory';
 
@@ -38,6 +39,7 @@ export class DemoService implements OnApplicationBootstrap {
     private readonly members: MembersService,
     private readonly systems: SystemsService,
     private readonly runs: RunsService,
+    private readonly series: SeriesService,
   ) {}
 
   async onApplicationBootstrap(): Promise<void> {
@@ -58,6 +60,16 @@ export class DemoService implements OnApplicationBootstrap {
       for (const experiment of experiments) {
         const body = { systemId: id, revision: 1, experiment: { format: 'heddle.experiment/1', ...experiment } };
         await this.runs.create(contexts[owner], body);
+      }
+      for (const { of, experiment, ...rest } of DEMO_SERIES) {
+        if (of !== system.name) continue;
+        const body = {
+          ...rest,
+          systemId: id,
+          revision: 1,
+          experiment: { format: 'heddle.experiment/1', ...experiment },
+        };
+        await this.series.create(contexts[owner], body);
       }
     }
     this.logger.log(`made the demonstration lab with ${DEMO_SYSTEMS.length} systems`);

@@ -134,3 +134,19 @@ export const revisionsQuery = (labId: string, id: string) =>
         }),
       ),
   });
+
+export const seriesListQuery = (labId: string) =>
+  queryOptions({
+    queryKey: [...keys.lab(labId), 'series'],
+    queryFn: () =>
+      unwrap(client.GET('/api/labs/{labId}/series', { params: { path: { labId }, query: { limit: 100 } } })),
+  });
+
+export const seriesQuery = (labId: string, id: string) =>
+  queryOptions({
+    queryKey: [...keys.lab(labId), 'series', id],
+    queryFn: () => unwrap(client.GET('/api/labs/{labId}/series/{id}', { params: { path: { labId, id } } })),
+    // Its runs move on by themselves; the event stream tells of single runs only.
+    refetchInterval: ({ state }) =>
+      state.data?.runs.some((run) => run.state === 'queued' || run.state === 'running') ? 1500 : false,
+  });

@@ -596,6 +596,102 @@ export interface paths {
     patch?: never;
     trace?: never;
   };
+  '/api/labs/{labId}/runs/{id}/brief.pdf': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['BriefsController_brief'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/runs/{id}/package.eln': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['BriefsController_package'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/series': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['SeriesController_list'];
+    put?: never;
+    post: operations['SeriesController_create'];
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/series/{id}': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['SeriesController_read'];
+    put?: never;
+    post?: never;
+    delete: operations['SeriesController_remove'];
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/series/{id}/series.csv': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['SeriesController_csv'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
+  '/api/labs/{labId}/series/{id}/series.jdx': {
+    parameters: {
+      query?: never;
+      header?: never;
+      path?: never;
+      cookie?: never;
+    };
+    get: operations['SeriesController_jcamp'];
+    put?: never;
+    post?: never;
+    delete?: never;
+    options?: never;
+    head?: never;
+    patch?: never;
+    trace?: never;
+  };
   '/api/labs/{labId}/today': {
     parameters: {
       query?: never;
@@ -882,6 +978,38 @@ export interface components {
       busy: number;
       queued: number;
       running: number;
+    };
+    VariationDto: {
+      /** @enum {string} */
+      quantity: 'field' | 'temperature' | 'spinning' | 'delay' | 'rate' | 'coupling' | 'tauC';
+      /** @description the exchange step 'from,to' or the coupling 'a,b'; the first by default */
+      target?: string;
+      values: number[];
+    };
+    SeriesDto: {
+      id: string;
+      name: string;
+      system: components['schemas']['PersonDto'];
+      revision: number;
+      owner: components['schemas']['PersonDto'];
+      vary: components['schemas']['VariationDto'];
+      createdAt: string;
+      /** @description one for each value, in their order */
+      runs: components['schemas']['RunDto'][];
+    };
+    SeriesPageDto: {
+      items: components['schemas']['SeriesDto'][];
+      nextCursor: string | null;
+    };
+    NewSeriesDto: {
+      name: string;
+      systemId: string;
+      revision: number;
+      /** @description heddle.experiment/1 */
+      experiment: {
+        [key: string]: unknown;
+      };
+      vary: components['schemas']['VariationDto'];
     };
     TodayDto: {
       /** @description runs of mine that failed and wait for a decision */
@@ -1940,6 +2068,178 @@ export interface operations {
     };
   };
   RunsController_arrays: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  BriefsController_brief: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  BriefsController_package: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  SeriesController_list: {
+    parameters: {
+      query?: {
+        limit?: number;
+        /** @description nextCursor of the page before */
+        cursor?: string;
+      };
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['SeriesPageDto'];
+        };
+      };
+    };
+  };
+  SeriesController_create: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody: {
+      content: {
+        'application/json': components['schemas']['NewSeriesDto'];
+      };
+    };
+    responses: {
+      201: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['SeriesDto'];
+        };
+      };
+    };
+  };
+  SeriesController_read: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content: {
+          'application/json': components['schemas']['SeriesDto'];
+        };
+      };
+    };
+  };
+  SeriesController_remove: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      204: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  SeriesController_csv: {
+    parameters: {
+      query?: never;
+      header?: never;
+      path: {
+        id: string;
+        labId: unknown;
+      };
+      cookie?: never;
+    };
+    requestBody?: never;
+    responses: {
+      200: {
+        headers: {
+          [name: string]: unknown;
+        };
+        content?: never;
+      };
+    };
+  };
+  SeriesController_jcamp: {
     parameters: {
       query?: never;
       header?: never;

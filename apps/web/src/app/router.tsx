@@ -78,6 +78,14 @@ function labRoutes(): RouteObject[] {
     { path: 'runs', lazy: async () => ({ Component: (await import('../features/runs/RunsPage')).RunsPage }) },
     { path: 'runs/:runId', lazy: async () => ({ Component: (await import('../features/viewer/RunPage')).RunPage }) },
     {
+      path: 'series',
+      lazy: async () => ({ Component: (await import('../features/series/SeriesListPage')).SeriesListPage }),
+    },
+    {
+      path: 'series/:seriesId',
+      lazy: async () => ({ Component: (await import('../features/series/SeriesPage')).SeriesPage }),
+    },
+    {
       lazy: async () => ({ Component: (await import('../features/lab/LabLayout')).LabLayout }),
       children: [
         {

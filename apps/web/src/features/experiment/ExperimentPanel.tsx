@@ -1,6 +1,6 @@
 import { Button, Group, NativeSelect, Stack, Text, Title } from '@mantine/core';
 import { useMutation } from '@tanstack/react-query';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { useNavigate } from 'react-router-dom';
 import { EngineError, estimateCost, type Experiment, type Report, type SpinSystem } from '@heddle/shared';
 import { client, unwrap } from '../../api/client';
@@ -9,6 +9,7 @@ import { useCommands } from '../../lib/commands';
 import { formatSeconds } from '../../lib/format';
 import { notifyDone, notifyFailure } from '../../lib/forms';
 import { LeftOut } from '../report/LeftOut';
+import { NewSeries } from '../series/NewSeries';
 import { AskFields, Field, IsotopeChecks } from './fields';
 import { asksOf, choose, setAsk } from './logic/experiment-draft';
 import { RECIPES, RELAXATIONS, SAMPLES } from './logic/recipes';
@@ -31,6 +32,7 @@ interface Props {
 export function ExperimentPanel({ labId, system, document, changed, experiment, report, saveFirst }: Props) {
   const { draft, checked, edit } = experiment;
   const navigate = useNavigate();
+  const [asking, setAsking] = useState(false);
   const run = useMutation({
     mutationFn: async () => {
       const saved = await saveFirst();
@@ -49,6 +51,7 @@ export function ExperimentPanel({ labId, system, document, changed, experiment, 
   });
   const possible = checked.experiment !== null && document !== null && !run.isPending;
   useCommands([
+    { id: 'series.new', label: 'Series of runs', canRun: () => possible, run: () => setAsking(true) },
     {
       id: 'run.queue',
       label: 'Run this experiment',
@@ -149,11 +152,25 @@ export function ExperimentPanel({ labId, system, document, changed, experiment, 
           </Text>
         ))}
         <Cost system={document} experiment={checked.experiment} />
-        <Button onClick={() => run.mutate()} disabled={!possible} loading={run.isPending}>
-          {changed || !system ? 'Save and run' : 'Run'}
-        </Button>
+        <Group gap="xs" wrap="nowrap">
+          <Button flex={1} onClick={() => run.mutate()} disabled={!possible} loading={run.isPending}>
+            {changed || !system ? 'Save and run' : 'Run'}
+          </Button>
+          <Button variant="default" disabled={!possible} onClick={() => setAsking(true)}>
+            Series
+          </Button>
+        </Group>
       </Stack>
       {report && <LeftOut report={report} brief />}
+      {asking && document && checked.experiment && (
+        <NewSeries
+          labId={labId}
+          system={document}
+          experiment={checked.experiment}
+          saveFirst={saveFirst}
+          onClose={() => setAsking(false)}
+        />
+      )}
     </section>
   );
 }
