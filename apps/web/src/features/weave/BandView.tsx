@@ -16,6 +16,9 @@ interface BandViewProps {
   onOpen(key: string): void;
 }
 
+/** Ticks further left have no number: the isotope's name stands there, px. */
+const ISOTOPE_ROOM = 44;
+
 /** The band of one isotope: its axis and its threads. */
 export function BandView({ band, width, selected, partners, onSelect, onDrag, onStep, onType, onOpen }: BandViewProps) {
   const folded = new Set(band.bundles.flatMap((bundle) => bundle.ids));
@@ -40,9 +43,11 @@ export function BandView({ band, width, selected, partners, onSelect, onDrag, on
             y2={band.axisY + 4}
             className={classes.axis}
           />
-          <text x={ppmToX(band.scale, tick)} y={band.axisY + 17} className={classes.tick}>
-            {tick.toFixed(decimals)}
-          </text>
+          {ppmToX(band.scale, tick) > ISOTOPE_ROOM && (
+            <text x={ppmToX(band.scale, tick)} y={band.axisY + 17} className={classes.tick}>
+              {tick.toFixed(decimals)}
+            </text>
+          )}
         </g>
       ))}
       {band.threads
