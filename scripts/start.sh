@@ -33,6 +33,13 @@ trap 'kill -TERM $server 2>/dev/null' INT TERM HUP
 if wait_for_server "$server" "$HEDDLE_PORT"; then
   say ''
   say "Heddle is ready: http://localhost:$HEDDLE_PORT      (stop with Ctrl-C)"
+  [ -n "${HEDDLE_SMTP_URL:-}" ] || say "Mail that it sends is caught: http://localhost:$HEDDLE_PORT/api/mail"
+  accounts=${HEDDLE_DATA:-.data}/demo-accounts
+  if [ -f "$accounts" ]; then
+    say ''
+    say 'Accounts of the demonstration lab (address, password):'
+    cat "$accounts"
+  fi
 fi
 status=0
 while kill -0 "$server" 2>/dev/null; do

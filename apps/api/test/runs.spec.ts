@@ -125,6 +125,15 @@ describe('a run', () => {
     expect((await owner.delete(runs(`/${made.body.id}`))).status).toBe(204);
   });
 
+  it('is done at once when it is short, though a long one holds the worker', async () => {
+    const long = await owner.post(runs(), { systemId: await slowSystem(), revision: 1, experiment: slow() });
+    await reach(long.body.id, 'running');
+    const short = await queue(experiment(470));
+    await reach(short.body.id, 'done');
+    expect((await owner.get(runs(`/${long.body.id}`))).body.state).toBe('running');
+    await owner.post(runs(`/${long.body.id}/cancel`));
+  });
+
   it('goes back into the queue when its worker is lost, and is computed then', async () => {
     const made = await queue(experiment(440));
     await reach(made.body.id, 'done');

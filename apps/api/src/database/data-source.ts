@@ -13,6 +13,7 @@ import { SeriesEntity } from '../series/series.entity.js';
 import { RevisionEntity } from '../systems/revision.entity.js';
 import { SystemEntity } from '../systems/system.entity.js';
 import { Bench1764560100000 } from './migrations/1764560100000-bench.js';
+import { ShortRuns1764560300000 } from './migrations/1764560300000-short-runs.js';
 import { Series1764560200000 } from './migrations/1764560200000-series.js';
 import { People1764560000000 } from './migrations/1764560000000-people.js';
 
@@ -34,7 +35,7 @@ export function dataSourceOptions(url: string): DataSourceOptions {
       ResultEntity,
       SeriesEntity,
     ],
-    migrations: [People1764560000000, Bench1764560100000, Series1764560200000],
+    migrations: [People1764560000000, Bench1764560100000, Series1764560200000, ShortRuns1764560300000],
     migrationsRun: true,
     synchronize: false,
     timezone: 'Z',

@@ -81,19 +81,24 @@ export class JobsService implements OnApplicationBootstrap, OnApplicationShutdow
     await this.renewLeases();
     await this.requeueLost();
     while (!this.stopped && this.running.size < this.settings.workers) {
-      const run = await this.claim();
+      const run = await this.claim(false);
       if (!run) return;
       this.start(run);
     }
+    // One thread more for short runs, which so never wait behind long ones.
+    if (!this.stopped && this.running.size === this.settings.workers) {
+      const run = await this.claim(true);
+      if (run) this.start(run);
+    }
   }
 
-  /** Claims the oldest queued run in one statement. */
-  private async claim(): Promise<RunEntity | null> {
+  /** Claims the oldest queued run in one statement, short ones first; only a short one if asked so. */
+  private async claim(onlyShort: boolean): Promise<RunEntity | null> {
     const lease = randomUUID();
     await this.dataSource.query(
       `UPDATE runs SET state = 'running', lease = ?, leaseUntil = ?, startedAt = ?, progress = 0, attempts = attempts + 1
-       WHERE state = 'queued' ORDER BY createdAt, id LIMIT 1`,
-      [lease, new Date(Date.now() + LEASE_MS), new Date()],
+       WHERE state = 'queued' AND short >= ? ORDER BY short DESC, createdAt, id LIMIT 1`,
+      [lease, new Date(Date.now() + LEASE_MS), new Date(), onlyShort],
     );
     return this.runs.findOneBy({ lease, state: 'running' });
   }

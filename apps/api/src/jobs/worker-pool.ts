@@ -16,7 +16,7 @@ export class WorkerPool implements OnModuleDestroy {
 
   constructor(@Inject(SETTINGS) private readonly settings: Settings) {
     this.threads = settings.workers;
-    this.pool = new Piscina({ ...workerFile(), minThreads: 0, maxThreads: settings.workers, idleTimeout: 60_000 });
+    this.pool = new Piscina({ ...workerFile(), minThreads: 0, maxThreads: settings.workers + 1, idleTimeout: 60_000 });
   }
 
   get busy(): number {

@@ -44,6 +44,10 @@ export class RunEntity {
   @Column({ type: 'varchar', length: 140, nullable: true, unique: true })
   requestKey: string | null;
 
+  /** Estimated to be done in moments: such a run never waits behind a long one. */
+  @Column({ type: 'boolean', default: false })
+  short: boolean;
+
   @Column({ type: 'varchar', length: 20, default: 'queued' })
   state: RunState;
 

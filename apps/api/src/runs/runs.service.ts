@@ -31,6 +31,9 @@ import {
   type WorkersDto,
 } from './runs.dto.js';
 
+/** Runs estimated below this have a thread of their own beside the others. */
+const SHORT_SECONDS = 2;
+
 const wrongState = (detail: string) => new Problem(HttpStatus.CONFLICT, 'wrong-state', detail);
 
 /** What is to be run. `system` is the revision's document, or that with one value varied. */
@@ -97,6 +100,7 @@ export class RunsService {
         engine: ENGINE_VERSION,
         identity,
         requestKey,
+        short: estimateCost(system, experiment).seconds < SHORT_SECONDS,
       }),
     );
     this.jobs.wake();

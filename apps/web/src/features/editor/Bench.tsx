@@ -163,7 +163,15 @@ function BenchHeader({
           )}
         </Text>
       </div>
-      <Group gap="xs" wrap="nowrap">
+      <Group gap="xs" className={classes.actions}>
+        <TextInput
+          aria-label="Note for the revision"
+          placeholder="What changed"
+          className={classes.note}
+          value={save.note}
+          maxLength={2000}
+          onChange={({ currentTarget: { value } }) => save.setNote(value)}
+        />
         <Tooltip label="Undo (Ctrl+Z)">
           <ActionIcon variant="default" size="lg" aria-label="Undo" disabled={!state.canUndo} onClick={state.undo}>
             {'\u21b6'}

@@ -18,6 +18,9 @@ export interface SaveConflict {
 
 export interface Save {
   readonly possible: boolean;
+  /** What changed, in words; goes with the next save. */
+  readonly note: string;
+  setNote(note: string): void;
   readonly saving: boolean;
   readonly conflict: SaveConflict | null;
   now(): void;
@@ -31,25 +34,28 @@ export interface Save {
 export function useSave(labId: string, system: System | null, state: DraftState): Save {
   const queryClient = useQueryClient();
   const navigate = useNavigate();
+  const [note, setNote] = useState('');
   const [conflict, setConflict] = useState<SaveConflict | null>(null);
   const mutation = useMutation({
     mutationFn: async ({ document, basedOn }: { document: Record<string, unknown>; basedOn: number }) => {
+      const words = note.trim() === '' ? {} : { note: note.trim() };
       if (!system) {
         const made = await unwrap(
-          client.POST('/api/labs/{labId}/systems', { params: { path: { labId } }, body: { document } }),
+          client.POST('/api/labs/{labId}/systems', { params: { path: { labId } }, body: { document, ...words } }),
         );
         return { systemId: made.id, revision: made.latestRevision };
       }
       const { number } = await unwrap(
         client.POST('/api/labs/{labId}/systems/{id}/revisions', {
           params: { path: { labId, id: system.id } },
-          body: { basedOn, document },
+          body: { basedOn, document, ...words },
         }),
       );
       return { systemId: system.id, revision: number };
     },
     onSuccess: async ({ systemId, revision }) => {
       state.forget();
+      setNote('');
       await Promise.all([
         queryClient.invalidateQueries({ queryKey: keys.systems(labId) }),
         queryClient.invalidateQueries({ queryKey: keys.system(labId, systemId) }),
@@ -71,6 +77,8 @@ export function useSave(labId: string, system: System | null, state: DraftState)
   };
   return {
     possible,
+    note,
+    setNote,
     saving: mutation.isPending,
     conflict,
     now: () => {
