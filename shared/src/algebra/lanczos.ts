@@ -16,16 +16,20 @@ export interface Sampling {
 }
 
 /** x^T x below this part of |x|^2 has lost its figures. */
-const BREAKDOWN = 1e-10;
+const BREAKDOWN = 1e-6;
 /** Overlaps above this are taken off; a tenth of the root of rounding. */
 const MOST_OVERLAP = 1e-9;
-/** A new direction this short beside A q is rounding. */
-const CLOSED = 1e-13;
+/** A new direction this short beside A q is made of what cancelled, */
+const CANCELLED = 1e-2;
+/** and this short it is rounding. */
+const CLOSED = 1e-12;
+/** A only damps: eigenvalues that grow by more than this part of the largest are wrong. */
+const GROWTH = 1e-7;
 /** Weights below this part of the whole are left out. */
 const FAINT = 1e-15;
 
 /**
- * p^T exp(A k dwell) v for k = 0..points-1; null where the recursion breaks down, so that another method must serve. Where v is not
+ * p^T exp(A k dwell) v for k = 0..points-1; null where the recursion breaks down, so that another method must serve. A must only damp. Where v is not
  * a multiple of p two recursions are needed, as p^T f v = [(p+v)^T f (p+v) - (p-v)^T f (p-v)]/4. A size of n takes n^3 operations
  * and room for n^2 complex numbers. `onStep` hears the fraction done.
  */
@@ -186,7 +190,7 @@ class Recursion {
       const q = this.vector(k);
       subtract(next, q, ...product(q, next));
     }
-    const square = this.keepOrthogonal();
+    const square = this.keepOrthogonal(size);
     this.steps++;
     const rest = length(next);
     if (rest <= CLOSED * size || this.steps === n) this.state = 'closed';
@@ -198,15 +202,19 @@ class Recursion {
     }
   }
 
-  measure(): SpectralMeasure | null {
-    return this.state === 'broken' ? null : spectralMeasure(this.steps, this.diagonal, this.beside);
+  /** null where something went wrong: the recursion, the diagonalisation, or eigenvalues that grow. */
+  measure(rotations?: Rotations): SpectralMeasure | null {
+    if (this.state === 'broken') return null;
+    const found = spectralMeasure(this.steps, this.diagonal, this.beside, rotations);
+    if (!found) return null;
+    const radius = found.real.reduce((most, x, k) => Math.max(most, Math.abs(x) + Math.abs(found.imag[k])), 0);
+    return found.real.every((x) => x <= GROWTH * radius) ? found : null;
   }
 
   /** f(A) of the first vector. */
   apply(f: EigenFunction): ComplexArray | null {
-    if (this.state === 'broken') return null;
     const rotations = new Rotations();
-    const found = spectralMeasure(this.steps, this.diagonal, this.beside, rotations);
+    const found = this.measure(rotations);
     if (!found) return null;
     const [real, imag] = [found.rowReal, found.rowImag];
     for (let k = 0; k < this.steps; k++) {
@@ -227,14 +235,21 @@ class Recursion {
     return { real: data.subarray(first, first + this.n), imag: data.subarray(first + this.n, first + 2 * this.n) };
   }
 
-  /** Makes the next vector orthogonal to all before it when that is due; gives its product with itself. */
-  private keepOrthogonal(): [number, number] {
+  /**
+   * Makes the next vector orthogonal to all before it when that is due; gives its product with itself. A vector that is short beside
+   * |A q| = `size` is what rounding left of a cancellation, and needs that twice (B. N. Parlett, The Symmetric Eigenvalue Problem,
+   * 1980, section 6.9).
+   */
+  private keepOrthogonal(size: number): [number, number] {
     const { steps, next, diagonal, beside, loss } = this;
     const square = selfProduct(next);
     if (loss.advance(steps, diagonal, beside, squareRoot(square)) > MOST_OVERLAP) this.restoring = 2;
+    const short = length(next) < CANCELLED * size;
+    if (short) this.restoring = 2;
     if (this.restoring === 0) return square;
     this.restoring--;
     this.removeOlder(steps + 1);
+    if (short) this.removeOlder(steps + 1);
     loss.restored(steps + 1);
     return selfProduct(next);
   }

@@ -7,7 +7,7 @@ import { ensemblesOf, hamiltoniansOf, type Ensemble } from './ensemble.js';
 import { generatorOf } from './generator.js';
 import { coherenceBlocks } from './spin-space.js';
 
-const hertz = fc.double({ min: -200, max: 200, noNaN: true });
+const hertz = fc.integer({ min: -200, max: 200 }).filter((value) => value !== 0);
 const time = fc.double({ min: 0.01, max: 5, noNaN: true });
 
 /** A proton pair beside a deuteron in two states, everything relaxing. */
@@ -18,7 +18,7 @@ const ensembles = fc
     t1: fc.tuple(time, time, time),
     ratio: fc.double({ min: 0.05, max: 2, noNaN: true }),
     population: fc.double({ min: 0.05, max: 0.95, noNaN: true }),
-    rate: fc.double({ min: 0, max: 1e4, noNaN: true }),
+    rate: fc.integer({ min: 0, max: 1e4 }),
   })
   .map(({ j, shifts, t1, ratio, population, rate }) => {
     const nucleus = (id: string, isotope: string, shift: number, n: number) => ({

@@ -1,7 +1,7 @@
 import { complexMatrix, type ComplexMatrix } from '../../algebra/dense.js';
 import { expmDense } from '../../algebra/expm-dense.js';
 import { expAction, sampleSignals, type KrylovCounts } from '../../algebra/krylov.js';
-import { lanczosSignal, type Sampling } from '../../algebra/lanczos.js';
+import { lanczosAction, lanczosSignal, type EigenFunction, type Sampling } from '../../algebra/lanczos.js';
 import { rowSumNorm, type SparseComplex } from '../../algebra/sparse.js';
 import type { ComplexArray } from '../../run/solved.js';
 
@@ -9,17 +9,17 @@ import type { ComplexArray } from '../../run/solved.js';
 const DENSE_FLOP = 4e-10;
 const KRYLOV_ENTRY = 6e-9;
 const KRYLOV_ROW = 5e-8;
+/** The exponential of a small matrix, shared by the products of its step. */
+const KRYLOV_PRODUCT = 1e-4;
 export const LANCZOS_CUBE = 7e-10;
 const LANCZOS_SQUARE = 1e-7;
 const LANCZOS_SAMPLE = 6e-9;
 /** Products of dense matrices in an exponential besides its squarings. */
 const PADE_PRODUCTS = 10;
 /** Matrix-vector products of a Krylov step for each radian of the matrix times t; found by trial. */
-const PRODUCTS_PER_RADIAN = 0.9;
-/** The same while a signal is sampled. */
-const SAMPLED_PER_RADIAN = 4.5;
+const PRODUCTS_PER_RADIAN = 4.5;
 /** Relative error that Krylov steps may make over a whole signal or evolution. */
-const TOLERANCE = 1e-10;
+export const TOLERANCE = 1e-10;
 /** Above these a dense matrix, or all vectors of a recursion, are not even thought of. */
 const MOST_DENSE = 1200;
 export const MOST_LANCZOS = 4000;
@@ -33,9 +33,8 @@ function denseSeconds(a: SparseComplex, t: number): number {
 
 /** Seconds that exp(A t) v takes by Krylov steps, with `samples` on the way. */
 function krylovSeconds(a: SparseComplex, t: number, samples = 0): number {
-  const perRadian = samples > 0 ? SAMPLED_PER_RADIAN : PRODUCTS_PER_RADIAN;
-  const products = (perRadian * rowSumNorm(a) * t) / 2 + 30;
-  return products * (KRYLOV_ENTRY * a.columns.length + KRYLOV_ROW * a.size) + samples * 2e-6;
+  const products = (PRODUCTS_PER_RADIAN * rowSumNorm(a) * t) / 2 + 30;
+  return products * (KRYLOV_PRODUCT + KRYLOV_ENTRY * a.columns.length + KRYLOV_ROW * a.size) + samples * 2e-6;
 }
 
 /** Seconds that one signal takes by a whole Lanczos recursion. */
@@ -45,9 +44,14 @@ function lanczosSeconds({ size, columns }: SparseComplex, samples: number): numb
   return LANCZOS_CUBE * size ** 3 + LANCZOS_SQUARE * size ** 2 + products + LANCZOS_SAMPLE * size * samples;
 }
 
+/** Seconds that exp(A t) v takes by Lanczos recursions of its real and its imaginary part. */
+function actionSeconds(a: SparseComplex): number {
+  return 2 * lanczosSeconds(a, 0);
+}
+
 /** Seconds that evolving will take. */
 export function evolutionSeconds(a: SparseComplex, t: number): number {
-  return Math.min(denseSeconds(a, t), krylovSeconds(a, t));
+  return Math.min(denseSeconds(a, t), krylovSeconds(a, t), actionSeconds(a));
 }
 
 /** Seconds that sampling will take. */
@@ -55,20 +59,89 @@ export function samplingSeconds(a: SparseComplex, { dwell, points }: Sampling): 
   return Math.min(lanczosSeconds(a, points), krylovSeconds(a, dwell * points, points));
 }
 
-/** exp(A t) v by the cheaper of a dense exponential, kept for the next time, and Krylov steps. */
+/** What is known of one evolution that comes again: its dense exponential, or the seconds spent without one. */
+export interface Repeated {
+  propagator?: ComplexMatrix;
+  spent: number;
+}
+
+/**
+ * exp(A t) v by Krylov steps or Lanczos recursion, whichever is cheaper, or by a dense exponential as soon as that would not have
+ * cost more than all that was spent on this evolution.
+ */
 export function evolveVector(
   a: SparseComplex,
   v: ComplexArray,
   t: number,
-  kept: Map<string, ComplexMatrix>,
-  key: string,
+  populations: Float64Array,
+  repeated: Repeated,
   counts: KrylovCounts,
 ): ComplexArray {
-  const stored = kept.get(key);
-  if (!stored && denseSeconds(a, t) > krylovSeconds(a, t)) return expAction(a, v, t, TOLERANCE, counts);
-  const propagator = stored ?? expmDense(toDense(a, t));
-  kept.set(key, propagator);
-  return matrixTimes(propagator, v);
+  const [dense, krylov, lanczos] = [denseSeconds(a, t), krylovSeconds(a, t), actionSeconds(a)];
+  repeated.spent += Math.min(krylov, lanczos);
+  if (!repeated.propagator && dense <= repeated.spent) repeated.propagator = expmDense(toDense(a, t));
+  if (repeated.propagator) return matrixTimes(repeated.propagator, v);
+  const evolved = lanczos < krylov ? symmetricAction(a, v, populations, exponential(t), counts) : null;
+  return evolved ?? expAction(a, v, t, TOLERANCE, counts);
+}
+
+/**
+ * The solution of dv/dt = A v + source after t: exp(A t) v and the integral of exp(A tau) source, by Lanczos recursions; null where
+ * those break down or the size is beyond them.
+ */
+export function evolveWithSource(
+  a: SparseComplex,
+  v: ComplexArray,
+  source: Float64Array,
+  populations: Float64Array,
+  t: number,
+  counts: KrylovCounts,
+): ComplexArray | null {
+  if (a.size > MOST_LANCZOS) return null;
+  const evolved = symmetricAction(a, v, populations, exponential(t), counts);
+  if (!evolved) return null;
+  const flow = { real: source, imag: new Float64Array(source.length) };
+  const added = symmetricAction(a, flow, populations, exponentialIntegral(t), counts);
+  if (!added) return null;
+  for (let i = 0; i < a.size; i++) {
+    evolved.real[i] += added.real[i];
+    evolved.imag[i] += added.imag[i];
+  }
+  return evolved;
+}
+
+/** f(A) v by way of the symmetric D^-1 A D, D the roots of the populations. */
+function symmetricAction(
+  a: SparseComplex,
+  v: ComplexArray,
+  populations: Float64Array,
+  f: EigenFunction,
+  counts: KrylovCounts,
+): ComplexArray | null {
+  const roots = populations.map(Math.sqrt);
+  const start = { real: v.real.map((x, i) => x / roots[i]), imag: v.imag.map((x, i) => x / roots[i]) };
+  const out = lanczosAction(symmetrised(a, roots), start, f, counts);
+  return out && { real: out.real.map((x, i) => x * roots[i]), imag: out.imag.map((x, i) => x * roots[i]) };
+}
+
+/** exp(x t) */
+function exponential(t: number): EigenFunction {
+  return (re, im) => {
+    const size = Math.exp(re * t);
+    return [size * Math.cos(im * t), size * Math.sin(im * t)];
+  };
+}
+
+/** (exp(x t) - 1)/x, by its series for small x t. */
+function exponentialIntegral(t: number): EigenFunction {
+  const whole = exponential(t);
+  return (re, im) => {
+    const size = re * re + im * im;
+    if (size * t * t < 1e-8)
+      return [t + (re * t * t) / 2 + ((re * re - im * im) * t ** 3) / 6, (im * t * t) / 2 + (re * im * t ** 3) / 3];
+    const [er, ei] = whole(re, im);
+    return [((er - 1) * re + ei * im) / size, (ei * re - (er - 1) * im) / size];
+  };
 }
 
 /**

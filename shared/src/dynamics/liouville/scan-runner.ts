@@ -1,25 +1,35 @@
-import type { ComplexMatrix } from '../../algebra/dense.js';
-import { eigenSymmetric } from '../../algebra/eigen/symmetric.js';
-import type { KrylovCounts } from '../../algebra/krylov.js';
+import { expAction, type KrylovCounts } from '../../algebra/krylov.js';
 import type { SparseComplex } from '../../algebra/sparse.js';
 import { offsetsOf, relativePolarisation, senseOf } from '../../interactions/carriers.js';
 import { EngineError, type RunContext } from '../../run/context.js';
 import type { ComplexArray } from '../../run/solved.js';
-import { StickGrid } from '../../spectrum/stick-grid.js';
 import type { ScanStep } from '../../sequence/steps.js';
-import { eigenGroup, evolveClosed, toEigenstates, type EigenGroup } from './closed-evolution.js';
+import {
+  addSticks,
+  driveClosed,
+  eigenGroup,
+  evolveClosed,
+  toEigenstates,
+  type EigenGroup,
+} from './closed-evolution.js';
 import { Density } from './density.js';
 import { hamiltoniansOf, isClosed, type Ensemble } from './ensemble.js';
 import { generatorOf } from './generator.js';
 import type { DrivingField, SparseHamiltonian } from './hamiltonian.js';
 import { neededOrders, type NeededOrders } from './needed-orders.js';
-import { evolutionSeconds, evolveVector, samplingSeconds, signalsOf } from './open-evolution.js';
+import {
+  type Repeated,
+  evolutionSeconds,
+  evolveVector,
+  evolveWithSource,
+  samplingSeconds,
+  signalsOf,
+  TOLERANCE,
+} from './open-evolution.js';
 import { applyPulse, isotopeTotals, rotateAboutZ } from './rotations.js';
-import { coherenceBlocks, raising, type CoherenceBlock } from './spin-space.js';
+import { coherenceBlocks, everyCoherence, raising, type CoherenceBlock } from './spin-space.js';
 
 const RADIANS = Math.PI / 180;
-/** Elements below this beside the largest possible one count as empty. */
-const EMPTY = 1e-15;
 
 /** Nuclei that decay alike by line width while the signal is recorded. */
 export interface DetectionClass {
@@ -35,7 +45,7 @@ export class ScanRunner {
   private readonly blocks: readonly CoherenceBlock[];
   private readonly hamiltonians = new Map<string, SparseHamiltonian[]>();
   private readonly generators = new Map<string, SparseComplex>();
-  private readonly propagators = new Map<string, ComplexMatrix>();
+  private readonly evolutions = new Map<string, Repeated>();
   private readonly groups = new Map<string, EigenGroup>();
   private readonly totals: ReadonlyMap<string, Float64Array>;
 
@@ -63,7 +73,7 @@ export class ScanRunner {
     for (const [i, step] of steps.entries()) {
       if ('pulse' in step) this.pulse(rho, step.pulse, decoupled);
       else if ('delay' in step) this.delay(rho, step.delay, decoupled, needed[i]);
-      else if ('spoil' in step) keep(rho, (ket, bra) => ket === bra);
+      else if ('spoil' in step) rho.keep((ket, bra) => ket === bra);
       else if ('select' in step) this.select(rho, step.select.on, step.select.order);
       else if ('decouple' in step) decoupled = step.decouple;
       else if ('saturate' in step) this.saturate(rho, step.saturate, decoupled);
@@ -106,7 +116,7 @@ export class ScanRunner {
 
   private select(rho: Density, isotope: string, order: number): void {
     const totals = this.totals.get(isotope);
-    keep(rho, (ket, bra) => Math.abs((totals ? totals[ket] - totals[bra] : 0) - order) < 0.25);
+    rho.keep((ket, bra) => Math.abs((totals ? totals[ket] - totals[bra] : 0) - order) < 0.25);
   }
 
   private pulse(
@@ -175,13 +185,20 @@ export class ScanRunner {
         }
       });
     }
+    const free = generatorOf(n, all, hamiltonians, gamma, rates);
+    this.note(free, evolutionSeconds(free, seconds));
+    const driven = evolveWithSource(free, rho, source, this.populationsOf(free.size), seconds, this.counts);
+    if (driven) {
+      rho.real.set(driven.real);
+      rho.imag.set(driven.imag);
+      return;
+    }
     const generator = generatorOf(n, all, hamiltonians, gamma, rates, source);
-    this.note(generator, evolutionSeconds(generator, seconds));
     const v = { real: new Float64Array(generator.size), imag: new Float64Array(generator.size) };
     v.real.set(rho.real);
     v.imag.set(rho.imag);
     v.real[generator.size - 1] = 1;
-    const out = evolveVector(generator, v, seconds, new Map(), '', this.counts);
+    const out = expAction(generator, v, seconds, TOLERANCE, this.counts);
     rho.real.set(out.real.subarray(0, rho.real.length));
     rho.imag.set(out.imag.subarray(0, rho.imag.length));
   }
@@ -191,10 +208,9 @@ export class ScanRunner {
     this.offEquilibrium(rho, -1);
     this.blocks.forEach((block, b) => {
       if (!this.matters(block, needed)) return;
-      const v = this.gather(rho, block);
+      const v = rho.gather(block);
       if (!v) return;
-      this.scatter(
-        rho,
+      rho.scatter(
         block,
         this.closed ? this.closedDelay(b, v, seconds, decoupled) : this.openDelay(b, v, seconds, decoupled),
       );
@@ -214,7 +230,11 @@ export class ScanRunner {
   private openDelay(b: number, v: ComplexArray, seconds: number, decoupled: readonly string[]): ComplexArray {
     const generator = this.generator(b, decoupled);
     this.note(generator, evolutionSeconds(generator, seconds));
-    return evolveVector(generator, v, seconds, this.propagators, `${b}|${seconds}|${decoupled.join()}`, this.counts);
+    const key = `${b}|${seconds}|${decoupled.join()}`;
+    const populations = this.populationsOf(generator.size);
+    let repeated = this.evolutions.get(key);
+    if (!repeated) this.evolutions.set(key, (repeated = { spent: 0 }));
+    return evolveVector(generator, v, seconds, populations, repeated, this.counts);
   }
 
   private closedDelay(b: number, v: ComplexArray, seconds: number, decoupled: readonly string[]): ComplexArray {
@@ -241,7 +261,7 @@ export class ScanRunner {
     const needed = neededOrders([{ acquire: { phase: 0 } }], [...this.totals.keys()], experiment.observe, () => '')[0];
     const wanted = [...this.blocks.keys()].filter((b) => this.matters(this.blocks[b], needed));
     wanted.forEach((b, done) => {
-      const v = this.gather(rho, this.blocks[b]);
+      const v = rho.gather(this.blocks[b]);
       if (!v) return;
       const probes = this.detection.map(({ rows }) => this.probe(this.blocks[b], rows));
       if (probes.every((probe) => probe.every((x) => x === 0))) return;
@@ -270,7 +290,7 @@ export class ScanRunner {
     decoupled: readonly string[],
     onProgress: (fraction: number) => void,
   ): ComplexArray[] {
-    const { states, experiment, populations } = this.ensemble;
+    const { states, experiment } = this.ensemble;
     const { points, width } = experiment.acquisition;
     const sampling = { dwell: 1 / width, points };
     const generator = this.generator(b, decoupled);
@@ -280,8 +300,13 @@ export class ScanRunner {
       for (let s = 0; s < states.length; s++) all.set(probe, s * probe.length);
       return all;
     });
-    const weights = Float64Array.from(v.real, (_, i) => populations[Math.floor((i * states.length) / v.real.length)]);
-    return signalsOf(generator, v, everyState, weights, sampling, this.counts, onProgress);
+    return signalsOf(generator, v, everyState, this.populationsOf(generator.size), sampling, this.counts, onProgress);
+  }
+
+  /** The population of its exchange state for each of `size` elements. */
+  private populationsOf(size: number): Float64Array {
+    const { populations } = this.ensemble;
+    return Float64Array.from({ length: size }, (_, i) => populations[Math.floor((i * populations.length) / size)]);
   }
 
   /** Sticks at E_bra - E_ket with amplitude probe times rho, both among eigenstates. */
@@ -376,34 +401,6 @@ export class ScanRunner {
     }
     return true;
   }
-
-  private gather(rho: Density, { kets, bras }: CoherenceBlock): ComplexArray | null {
-    const { states } = this.ensemble;
-    const count = kets.length;
-    const v = { real: new Float64Array(states.length * count), imag: new Float64Array(states.length * count) };
-    let largest = 0;
-    for (let s = 0; s < states.length; s++) {
-      for (let i = 0; i < count; i++) {
-        const at = rho.at(s, kets[i], bras[i]);
-        const [re, im] = [rho.real[at], rho.imag[at]];
-        v.real[s * count + i] = re;
-        v.imag[s * count + i] = im;
-        largest = Math.max(largest, Math.abs(re), Math.abs(im));
-      }
-    }
-    return largest > EMPTY ? v : null;
-  }
-
-  private scatter(rho: Density, { kets, bras }: CoherenceBlock, v: ComplexArray): void {
-    const count = kets.length;
-    for (let s = 0; s < this.ensemble.states.length; s++) {
-      for (let i = 0; i < count; i++) {
-        const at = rho.at(s, kets[i], bras[i]);
-        rho.real[at] = v.real[s * count + i];
-        rho.imag[at] = v.imag[s * count + i];
-      }
-    }
-  }
 }
 
 function tooLarge(bytes: number | undefined, seconds: number | undefined): EngineError {
@@ -413,46 +410,6 @@ function tooLarge(bytes: number | undefined, seconds: number | undefined): Engin
     `this sequence on these coupled nuclei needs ${need}, more than a run may take`,
     'nuclei',
   );
-}
-
-function everyCoherence(n: number): Pick<CoherenceBlock, 'kets' | 'bras'> {
-  const kets = new Uint32Array(n * n);
-  const bras = new Uint32Array(n * n);
-  for (let i = 0; i < n * n; i++) {
-    kets[i] = Math.floor(i / n);
-    bras[i] = i % n;
-  }
-  return { kets, bras };
-}
-
-/** Zeros all elements but those that `kept` names. */
-function keep({ real, imag, states, dimension }: Density, kept: (ket: number, bra: number) => boolean): void {
-  for (let ket = 0; ket < dimension; ket++) {
-    for (let bra = 0; bra < dimension; bra++) {
-      if (kept(ket, bra)) continue;
-      for (let s = 0; s < states; s++) {
-        const at = (s * dimension + ket) * dimension + bra;
-        real[at] = imag[at] = 0;
-      }
-    }
-  }
-}
-
-/** rho_s <- U rho_s U+ with U = exp(-2 pi i H t), H real symmetric. */
-function driveClosed(rho: Density, s: number, h: SparseHamiltonian, t: number): void {
-  const n = rho.dimension;
-  const dense = new Float64Array(n * n);
-  for (let i = 0; i < n; i++)
-    for (let p = h.start[i]; p < h.start[i + 1]; p++) dense[i * n + h.columns[p]] += h.values[p];
-  const { values, vectors } = eigenSymmetric(dense, n);
-  const transposed = new Float64Array(n * n);
-  for (let k = 0; k < n; k++) for (let i = 0; i < n; i++) transposed[i * n + k] = vectors[k * n + i];
-  const all: EigenGroup = { members: new Uint32Array(n), energies: values, vectors, transposed };
-  const from = s * n * n;
-  const x = { real: rho.real.subarray(from, from + n * n), imag: rho.imag.subarray(from, from + n * n) };
-  const out = evolveClosed(all, all, x, t);
-  rho.real.set(out.real, from);
-  rho.imag.set(out.imag, from);
 }
 
 function slice({ real, imag }: ComplexArray, s: number, count: number): ComplexArray {
@@ -466,26 +423,4 @@ function addTo(sums: readonly ComplexArray[], parts: readonly ComplexArray[]): v
       sum.imag[k] += parts[c].imag[k];
     }
   });
-}
-
-/** Adds the FID of sticks with complex amplitudes. */
-function addSticks(
-  signal: ComplexArray,
-  hz: Float64Array,
-  real: Float64Array,
-  imag: Float64Array,
-  points: number,
-  width: number,
-): void {
-  const parts = [real, imag].map((amplitude) => {
-    const grid = new StickGrid(points, width);
-    grid.add(hz, amplitude);
-    const fid = { real: new Float64Array(points), imag: new Float64Array(points) };
-    grid.addTo(fid);
-    return fid;
-  });
-  for (let k = 0; k < points; k++) {
-    signal.real[k] += parts[0].real[k] - parts[1].imag[k];
-    signal.imag[k] += parts[0].imag[k] + parts[1].real[k];
-  }
 }

@@ -9,7 +9,7 @@ export interface Coherences {
 
 /**
  * Gamma, s^-1, restricted to the coherences given, which must be closed under Gamma: all of one order for each isotope, or
- * unions of such sets. Symmetric. Row and column i belong to |kets[i]><bras[i]|.
+ * unions of such sets. Symmetric, zeros included. Row and column i belong to |kets[i]><bras[i]|.
  */
 export function redfieldMatrix(
   terms: readonly RedfieldTerm[],
@@ -46,8 +46,7 @@ function addTransfer(
 ): void {
   for (let p = start[ket]; p < start[ket + 1]; p++) {
     for (let q = start[bra]; q < start[bra + 1]; q++) {
-      const product = scalarProduct(values, p, values, q);
-      if (product !== 0) sum.add(index.get(rows[p] * dimension + rows[q]), -product);
+      sum.add(index.get(rows[p] * dimension + rows[q]), -scalarProduct(values, p, values, q));
     }
   }
 }

@@ -219,9 +219,9 @@ describe('Gamma', () => {
   const randomSystem = fc
     .record({
       isotopes: fc.constantFrom(['1H', '1H'], ['13C', '1H'], ['15N', '1H'], ['1H', '14N'], ['23Na', '1H']),
-      constant: fc.double({ min: -20e3, max: 20e3, noNaN: true }),
+      constant: fc.integer({ min: -20e3, max: 20e3 }),
       polar: fc.tuple(angle, angle),
-      span: fc.double({ min: 0, max: 300, noNaN: true }),
+      span: fc.integer({ min: 0, max: 300 }),
       euler: fc.tuple(angle, angle, angle),
       logTau: fc.double({ min: -12, max: -7, noNaN: true }),
     })
@@ -271,7 +271,7 @@ describe('Gamma', () => {
           const size = dimension ** 2;
           const x = Float64Array.from({ length: size }, (_, i) => Math.sin((i + 1) * (seeds[i % 7] + 2)));
           const largest = gamma.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
-          expect(quadraticForm(gamma, x, x)).toBeGreaterThanOrEqual(-1e-11 * size * largest - Number.MIN_VALUE);
+          expect(quadraticForm(gamma, x, x)).toBeGreaterThanOrEqual(-1e-11 * size * largest);
         },
       ),
     );
