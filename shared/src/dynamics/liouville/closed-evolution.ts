@@ -1,6 +1,8 @@
 import { eigenSymmetric } from '../../algebra/eigen/symmetric.js';
 import { productWithTransposed } from '../../algebra/kernels/product.js';
 import type { ComplexArray } from '../../run/solved.js';
+import { StickGrid } from '../../spectrum/stick-grid.js';
+import type { Density } from './density.js';
 import type { SparseHamiltonian } from './hamiltonian.js';
 
 /** Eigenstates of H on a set of basis states that it keeps to themselves. */
@@ -53,4 +55,40 @@ export function evolveClosed(ket: EigenGroup, bra: EigenGroup, x: ComplexArray, 
     }
   }
   return { real: fromEigenstates(ket, bra, real), imag: fromEigenstates(ket, bra, imag) };
+}
+
+/** rho_s <- U rho_s U+ with U = exp(-2 pi i H t), H real symmetric. */
+export function driveClosed(rho: Density, s: number, h: SparseHamiltonian, t: number): void {
+  const n = rho.dimension;
+  const all = eigenGroup(
+    h,
+    Uint32Array.from({ length: n }, (_, state) => state),
+  );
+  const from = s * n * n;
+  const x = { real: rho.real.subarray(from, from + n * n), imag: rho.imag.subarray(from, from + n * n) };
+  const out = evolveClosed(all, all, x, t);
+  rho.real.set(out.real, from);
+  rho.imag.set(out.imag, from);
+}
+
+/** Adds the FID of sticks with complex amplitudes. */
+export function addSticks(
+  signal: ComplexArray,
+  hz: Float64Array,
+  real: Float64Array,
+  imag: Float64Array,
+  points: number,
+  width: number,
+): void {
+  const parts = [real, imag].map((amplitude) => {
+    const grid = new StickGrid(points, width);
+    grid.add(hz, amplitude);
+    const fid = { real: new Float64Array(points), imag: new Float64Array(points) };
+    grid.addTo(fid);
+    return fid;
+  });
+  for (let k = 0; k < points; k++) {
+    signal.real[k] += parts[0].real[k] - parts[1].imag[k];
+    signal.imag[k] += parts[0].imag[k] + parts[1].real[k];
+  }
 }

@@ -42,9 +42,8 @@ export function solveLiouville(system: SpinSystem, experiment: Experiment, conte
     fid,
     method: closed
       ? 'density operator stepped through the sequence among eigenstates of blocks'
-      : `composite Liouville space of ${system.states?.length ?? 1} states, restricted to the orders that are detected; ${
-          dimensions.products > 0 ? 'Krylov steps' : 'dense exponentials'
-        }, the cheaper by the cost model`,
+      : `composite Liouville space of ${system.states?.length ?? 1} states, restricted to the orders that are detected; each block by ` +
+        'Lanczos recursion, Krylov steps or a dense exponential, the cheapest by the cost model',
     dimensions,
     approximations: [],
     warnings: [],

@@ -106,3 +106,14 @@ export function coherenceBlocks(space: SpinSpace, keepsTotals: boolean): Coheren
     bras: Uint32Array.from(bras),
   }));
 }
+
+/** All n x n coherences, row-major. */
+export function everyCoherence(n: number): Pick<CoherenceBlock, 'kets' | 'bras'> {
+  const kets = new Uint32Array(n * n);
+  const bras = new Uint32Array(n * n);
+  for (let i = 0; i < n * n; i++) {
+    kets[i] = Math.floor(i / n);
+    bras[i] = i % n;
+  }
+  return { kets, bras };
+}
