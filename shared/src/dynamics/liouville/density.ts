@@ -63,4 +63,16 @@ export class Density {
       }
     }
   }
+
+  /** Puts the adjoint of what `scatter` puts into a block into the block with kets and bras exchanged. */
+  scatterAdjoint({ kets, bras }: CoherenceBlock, v: ComplexArray): void {
+    const count = kets.length;
+    for (let s = 0; s < this.states; s++) {
+      for (let i = 0; i < count; i++) {
+        const at = this.at(s, bras[i], kets[i]);
+        this.real[at] = v.real[s * count + i];
+        this.imag[at] = -v.imag[s * count + i];
+      }
+    }
+  }
 }

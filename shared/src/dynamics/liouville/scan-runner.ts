@@ -27,7 +27,7 @@ import {
   TOLERANCE,
 } from './open-evolution.js';
 import { applyPulse, isotopeTotals, rotateAboutZ } from './rotations.js';
-import { coherenceBlocks, everyCoherence, raising, type CoherenceBlock } from './spin-space.js';
+import { adjointBlocks, coherenceBlocks, everyCoherence, raising, type CoherenceBlock } from './spin-space.js';
 
 const RADIANS = Math.PI / 180;
 
@@ -43,6 +43,10 @@ export class ScanRunner {
   largestMatrix = 0;
   private readonly closed: boolean;
   private readonly blocks: readonly CoherenceBlock[];
+  /** For each block the one with kets and bras exchanged, whose elements a Hermitian rho has as well. */
+  private readonly adjoints: Uint32Array;
+  /** Whether rho is Hermitian at this step; a selection of one order ends that. */
+  private hermitian = true;
   private readonly hamiltonians = new Map<string, SparseHamiltonian[]>();
   private readonly generators = new Map<string, SparseComplex>();
   private readonly evolutions = new Map<string, Repeated>();
@@ -59,6 +63,7 @@ export class ScanRunner {
     if (context.limits && bytes > context.limits.bytes) throw tooLarge(bytes, undefined);
     this.closed = isClosed(ensemble);
     this.blocks = coherenceBlocks(space, !flips);
+    this.adjoints = adjointBlocks(this.blocks, space.dimension);
     const isotopes = [...new Set(space.particles.map(({ isotope }) => isotope))];
     this.totals = new Map(isotopes.map((isotope) => [isotope, isotopeTotals(space, isotope)]));
   }
@@ -70,6 +75,7 @@ export class ScanRunner {
     const needed = neededOrders(steps, [...this.totals.keys()], experiment.observe, isotopeOf);
     let decoupled: readonly string[] = experiment.decouple;
     let rho = this.equilibrium();
+    this.hermitian = true;
     for (const [i, step] of steps.entries()) {
       if ('pulse' in step) this.pulse(rho, step.pulse, decoupled);
       else if ('delay' in step) this.delay(rho, step.delay, decoupled, needed[i]);
@@ -116,6 +122,7 @@ export class ScanRunner {
 
   private select(rho: Density, isotope: string, order: number): void {
     const totals = this.totals.get(isotope);
+    this.hermitian &&= order === 0;
     rho.keep((ket, bra) => Math.abs((totals ? totals[ket] - totals[bra] : 0) - order) < 0.25);
   }
 
@@ -208,12 +215,13 @@ export class ScanRunner {
     this.offEquilibrium(rho, -1);
     this.blocks.forEach((block, b) => {
       if (!this.matters(block, needed)) return;
+      const mirrored = this.hermitian && this.adjoints[b] !== b;
+      if (mirrored && this.adjoints[b] < b && this.matters(this.blocks[this.adjoints[b]], needed)) return;
       const v = rho.gather(block);
       if (!v) return;
-      rho.scatter(
-        block,
-        this.closed ? this.closedDelay(b, v, seconds, decoupled) : this.openDelay(b, v, seconds, decoupled),
-      );
+      const out = this.closed ? this.closedDelay(b, v, seconds, decoupled) : this.openDelay(b, v, seconds, decoupled);
+      rho.scatter(block, out);
+      if (mirrored) rho.scatterAdjoint(block, out);
     });
     this.offEquilibrium(rho, 1);
   }

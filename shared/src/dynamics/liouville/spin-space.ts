@@ -107,6 +107,13 @@ export function coherenceBlocks(space: SpinSpace, keepsTotals: boolean): Coheren
   }));
 }
 
+/** For each block the index of the one with kets and bras exchanged. */
+export function adjointBlocks(blocks: readonly CoherenceBlock[], dimension: number): Uint32Array {
+  const blockOf = new Uint32Array(dimension * dimension);
+  blocks.forEach(({ kets, bras }, b) => kets.forEach((ket, i) => (blockOf[ket * dimension + bras[i]] = b)));
+  return Uint32Array.from(blocks, ({ kets, bras }) => blockOf[bras[0] * dimension + kets[0]]);
+}
+
 /** All n x n coherences, row-major. */
 export function everyCoherence(n: number): Pick<CoherenceBlock, 'kets' | 'bras'> {
   const kets = new Uint32Array(n * n);
