@@ -59,9 +59,7 @@ export function varied(
 function withDelay(system: SpinSystem, experiment: Experiment, value: number) {
   const { sequence } = experiment;
   const name = DELAYS.find((key) => key in sequence);
-  return name
-    ? { system, experiment: { ...experiment, sequence: { ...sequence, [name]: value } as Experiment['sequence'] } }
-    : null;
+  return name ? { system, experiment: { ...experiment, sequence: { ...sequence, [name]: value } } } : null;
 }
 
 function withRate(system: SpinSystem, experiment: Experiment, target: string | undefined, rate: number) {

@@ -40,7 +40,7 @@ export function readSettings(env: NodeJS.ProcessEnv = process.env): Settings {
     jwtSecret: env.HEDDLE_JWT_SECRET ?? signingKey(dataFolder),
     smtpUrl: env.HEDDLE_SMTP_URL ? url(env, 'HEDDLE_SMTP_URL', '') : undefined,
     mailFrom: env.HEDDLE_MAIL_FROM ?? 'Heddle <heddle@localhost>',
-    workers: whole(env, 'HEDDLE_WORKERS', Math.max(1, availableParallelism() - 1), 1, 256),
+    workers: whole(env, 'HEDDLE_WORKERS', Math.max(2, availableParallelism() - 1), 1, 256),
     runBytes: whole(env, 'HEDDLE_RUN_MEGABYTES', 1024, 16, 2 ** 20) * 2 ** 20,
     runSeconds: whole(env, 'HEDDLE_RUN_SECONDS', 600, 1, 86_400),
     demo: env.HEDDLE_DEMO !== 'no',

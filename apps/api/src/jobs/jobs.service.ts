@@ -144,6 +144,7 @@ export class JobsService implements OnApplicationBootstrap, OnApplicationShutdow
       await this.move(run.id, 'failed', { finishedAt, error: reply.message.slice(0, 2000) });
       return;
     }
+    if (reply.kind !== 'done') throw new Error('a part of a run is no result');
     const { report } = reply.result;
     const warnings =
       report.warnings.length + report.approximations.filter(({ hz, warnAbove }) => hz > warnAbove).length;

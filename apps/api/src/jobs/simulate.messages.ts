@@ -1,4 +1,4 @@
-import type { Experiment, Report, Line, RunLimits, SpinSystem } from '@heddle/shared';
+import type { Experiment, Line, PartialSignal, Report, RunLimits, SpinSystem } from '@heddle/shared';
 import type { MessagePort } from 'node:worker_threads';
 
 /** What a worker thread gets: plain data, and a port to tell its progress through. */
@@ -7,10 +7,15 @@ export interface SimulateTask {
   experiment: Experiment;
   limits: RunLimits;
   port: MessagePort;
+  /** One part of an oriented run in place of the whole. */
+  part?: { index: number; of: number };
 }
 
-/** What it gives back: a result, or the engine's refusal with its code. */
-export type SimulateReply = { kind: 'done'; result: PlainResult } | { kind: 'refused'; code: string; message: string };
+/** What it gives back: a result, the signal of a part, or the engine's refusal with its code. */
+export type SimulateReply =
+  | { kind: 'done'; result: PlainResult }
+  | { kind: 'part'; signal: PartialSignal }
+  | { kind: 'refused'; code: string; message: string };
 
 /** A Result as structured clone carries it. */
 export interface PlainResult {
