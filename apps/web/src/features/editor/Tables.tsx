@@ -1,8 +1,11 @@
-import { Tabs, TextInput, Textarea, Text } from '@mantine/core';
+import { Button, Tabs, TextInput, Textarea, Text } from '@mantine/core';
+import { useState } from 'react';
+import { GeometryImport } from '../geometry/GeometryImport';
 import { notifyDone } from '../../lib/forms';
 import { Grid } from './Grid';
 import { cellKey } from './logic/check';
 import { isBlankRow, type Row } from './logic/draft';
+import { withGeometry } from './logic/geometry';
 import { addRow, followRename, moveRow, removeRow, setCell, setField } from './logic/edit';
 import {
   COUPLING_COLUMNS,
@@ -141,6 +144,7 @@ export function Tables({
   onSelect(id: string | null): void;
 }) {
   const { draft, checked, edit } = state;
+  const [importing, setImporting] = useState(false);
   const problems = (tables: TableName[], fields: RegExp) =>
     [...checked.errors.cells.keys()].filter(
       (key) => tables.includes(key.split('/')[0] as TableName) && fields.test(key),
@@ -149,82 +153,99 @@ export function Tables({
   const placeErrors = problems(['nuclei', 'couplings'], /position|dipolar|polar/);
   const exchangeErrors = problems(['states', 'exchange'], /./);
   return (
-    <Tabs defaultValue="nuclei" keepMounted={false} className={classes.tables}>
-      <Tabs.List aria-label="Tables of the system">
-        <Tabs.Tab value="nuclei">Nuclei and couplings</Tabs.Tab>
-        <Tabs.Tab value="tensors">Tensors{tensorErrors > 0 && ` (${tensorErrors} to mend)`}</Tabs.Tab>
-        <Tabs.Tab value="positions">Positions{placeErrors > 0 && ` (${placeErrors} to mend)`}</Tabs.Tab>
-        <Tabs.Tab value="exchange">Exchange{exchangeErrors > 0 && ` (${exchangeErrors} to mend)`}</Tabs.Tab>
-        <Tabs.Tab value="notes">Notes</Tabs.Tab>
-      </Tabs.List>
-      <Tabs.Panel value="nuclei" className={classes.sheets}>
-        <div>
-          <Sheet
-            state={state}
-            table="nuclei"
-            label="Nuclei"
-            columns={NUCLEUS_COLUMNS}
-            selected={selected}
-            onSelect={onSelect}
-          />
-        </div>
-        <div>
-          <Sheet state={state} table="couplings" label="Couplings" columns={COUPLING_COLUMNS} />
-        </div>
-      </Tabs.Panel>
-      <Tabs.Panel value="tensors" className={classes.sheets}>
-        <div>
-          <h3 className={classes.sheetTitle}>Shift tensors</h3>
-          <Sheet state={state} table="nuclei" label="Shift tensors" columns={[NAME, ...TENSOR_COLUMNS]} fixed />
-        </div>
-        <div>
-          <h3 className={classes.sheetTitle}>Quadrupolar couplings</h3>
-          <Sheet
-            state={state}
-            table="nuclei"
-            label="Quadrupolar couplings"
-            columns={[NAME, ...QUADRUPOLE_COLUMNS]}
-            fixed
-          />
-        </div>
-      </Tabs.Panel>
-      <Tabs.Panel value="positions" className={classes.sheets}>
-        <div>
-          <h3 className={classes.sheetTitle}>Positions</h3>
-          <Sheet state={state} table="nuclei" label="Positions" columns={[NAME, ...POSITION_COLUMNS]} fixed />
-        </div>
-        <div>
-          <h3 className={classes.sheetTitle}>Dipolar couplings</h3>
-          <Sheet state={state} table="couplings" label="Dipolar couplings" columns={DIPOLAR_COLUMNS} />
-        </div>
-      </Tabs.Panel>
-      <Tabs.Panel value="exchange" className={classes.sheets}>
-        <div>
-          <h3 className={classes.sheetTitle}>States</h3>
-          <Sheet state={state} table="states" label="States" columns={stateColumns(state)} />
-        </div>
-        <div>
-          <h3 className={classes.sheetTitle}>Exchange between them</h3>
-          <Sheet state={state} table="exchange" label="Exchange" columns={EXCHANGE_COLUMNS} />
-        </div>
-      </Tabs.Panel>
-      <Tabs.Panel value="notes" className={classes.notes}>
-        <Textarea
-          label="Notes"
-          autosize
-          minRows={3}
-          value={draft.notes}
-          onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'notes', value), 'notes')}
-          error={checked.errors.fields.get('notes')}
+    <>
+      {importing && (
+        <GeometryImport
+          onClose={() => setImporting(false)}
+          onUse={(found) => {
+            edit((now) => withGeometry(now, found));
+            setImporting(false);
+            notifyDone(`${found.nuclei.length} nuclei are in the tables. Their shifts are still 0.`);
+          }}
         />
-        <TextInput
-          label="Correlation time of tumbling, s"
-          description="Needed for relaxation from tumbling; 5e-11 is a small molecule in water."
-          value={draft.tauC}
-          onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'tauC', value), 'tauC')}
-          error={checked.errors.fields.get('tauC')}
-        />
-      </Tabs.Panel>
-    </Tabs>
+      )}
+      <Tabs defaultValue="nuclei" keepMounted={false} className={classes.tables}>
+        <Tabs.List aria-label="Tables of the system">
+          <Tabs.Tab value="nuclei">Nuclei and couplings</Tabs.Tab>
+          <Tabs.Tab value="tensors">Tensors{tensorErrors > 0 && ` (${tensorErrors} to mend)`}</Tabs.Tab>
+          <Tabs.Tab value="positions">Positions{placeErrors > 0 && ` (${placeErrors} to mend)`}</Tabs.Tab>
+          <Tabs.Tab value="exchange">Exchange{exchangeErrors > 0 && ` (${exchangeErrors} to mend)`}</Tabs.Tab>
+          <Tabs.Tab value="notes">Notes</Tabs.Tab>
+        </Tabs.List>
+        <Tabs.Panel value="nuclei" className={classes.sheets}>
+          <div>
+            <Sheet
+              state={state}
+              table="nuclei"
+              label="Nuclei"
+              columns={NUCLEUS_COLUMNS}
+              selected={selected}
+              onSelect={onSelect}
+            />
+          </div>
+          <div>
+            <Sheet state={state} table="couplings" label="Couplings" columns={COUPLING_COLUMNS} />
+          </div>
+        </Tabs.Panel>
+        <Tabs.Panel value="tensors" className={classes.sheets}>
+          <div>
+            <h3 className={classes.sheetTitle}>Shift tensors</h3>
+            <Sheet state={state} table="nuclei" label="Shift tensors" columns={[NAME, ...TENSOR_COLUMNS]} fixed />
+          </div>
+          <div>
+            <h3 className={classes.sheetTitle}>Quadrupolar couplings</h3>
+            <Sheet
+              state={state}
+              table="nuclei"
+              label="Quadrupolar couplings"
+              columns={[NAME, ...QUADRUPOLE_COLUMNS]}
+              fixed
+            />
+          </div>
+        </Tabs.Panel>
+        <Tabs.Panel value="positions" className={classes.sheets}>
+          <div>
+            <h3 className={classes.sheetTitle}>
+              Positions{' '}
+              <Button size="compact-xs" variant="default" onClick={() => setImporting(true)}>
+                Geometry file ...
+              </Button>
+            </h3>
+            <Sheet state={state} table="nuclei" label="Positions" columns={[NAME, ...POSITION_COLUMNS]} fixed />
+          </div>
+          <div>
+            <h3 className={classes.sheetTitle}>Dipolar couplings</h3>
+            <Sheet state={state} table="couplings" label="Dipolar couplings" columns={DIPOLAR_COLUMNS} />
+          </div>
+        </Tabs.Panel>
+        <Tabs.Panel value="exchange" className={classes.sheets}>
+          <div>
+            <h3 className={classes.sheetTitle}>States</h3>
+            <Sheet state={state} table="states" label="States" columns={stateColumns(state)} />
+          </div>
+          <div>
+            <h3 className={classes.sheetTitle}>Exchange between them</h3>
+            <Sheet state={state} table="exchange" label="Exchange" columns={EXCHANGE_COLUMNS} />
+          </div>
+        </Tabs.Panel>
+        <Tabs.Panel value="notes" className={classes.notes}>
+          <Textarea
+            label="Notes"
+            autosize
+            minRows={3}
+            value={draft.notes}
+            onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'notes', value), 'notes')}
+            error={checked.errors.fields.get('notes')}
+          />
+          <TextInput
+            label="Correlation time of tumbling, s"
+            description="Needed for relaxation from tumbling; 5e-11 is a small molecule in water."
+            value={draft.tauC}
+            onChange={({ currentTarget: { value } }) => edit((now) => setField(now, 'tauC', value), 'tauC')}
+            error={checked.errors.fields.get('tauC')}
+          />
+        </Tabs.Panel>
+      </Tabs>
+    </>
   );
 }
