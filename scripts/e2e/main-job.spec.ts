@@ -92,6 +92,7 @@ describe('the main job', () => {
     await page.keyboard.press('Enter');
     await page.keyboard.press('Control+s');
     await page.waitForURL(/systems\/[0-9a-f-]{36}/);
+    await page.getByText('Revision 1 of 1').waitFor();
     await shownSpectrum(page).waitFor();
     await page.keyboard.press('Control+Enter');
     await page.waitForURL('**/runs/*');
@@ -123,11 +124,51 @@ describe('the main job', () => {
   });
 });
 
+describe('solids and series', () => {
+  it('go from a geometry file to a dipolar powder pattern', async () => {
+    const page = await stage.signIn('chemist');
+    await page.goto(page.url().replace(/today$/, 'systems/new'));
+    await page.getByLabel('Name of the system').fill('From a file');
+    await page.getByRole('tab', { name: 'Positions' }).click();
+    await page.getByRole('button', { name: /Geometry file/ }).click();
+    const text = page.getByLabel('Text of the file');
+    await text.fill('2\npair\nH 0 0 0\nH 0 zero 1.58\n');
+    await page.getByText(/^line 4/).waitFor();
+    await text.fill('2\npair\nH 0 0 0\nH 0 0 1.58\n');
+    await page.getByRole('cell', { name: '1.580' }).waitFor();
+    expect(await axeFindings(page)).toEqual([]);
+    await page.getByRole('button', { name: 'Use these 2 nuclei and 1 couplings' }).click();
+    await page.getByLabel('Sample').selectOption('powder');
+    await page.getByLabel('Line width, Hz').fill('2000');
+    await page.getByLabel('Width, Hz', { exact: true }).fill('200000');
+    await page.getByLabel('Points').fill('1024');
+    await page.getByRole('button', { name: 'Save and run' }).click();
+    await page.waitForURL('**/runs/*');
+    await page.getByRole('application', { name: /spectrum of From a file/ }).waitFor({ timeout: 60_000 });
+    await page.getByText('Orientations', { exact: false }).first().waitFor();
+  });
+
+  it('run along a quantity and are shown as a stack and as a map', async () => {
+    const page = await stage.signIn('instructor');
+    await page.goto(`${page.url().replace(/today$/, 'systems')}?q=Rowan`);
+    await page.getByRole('link', { name: /Rowan/ }).first().click();
+    await shownSpectrum(page).waitFor();
+    await page.getByRole('button', { name: 'Series' }).click();
+    await page.getByLabel(/^Values/).fill('10 100 1000');
+    await page.getByRole('button', { name: 'Queue the series' }).click();
+    await page.waitForURL('**/series/*');
+    await page.getByRole('application', { name: /3 spectra of the series/ }).waitFor({ timeout: 60_000 });
+    expect(await axeFindings(page)).toEqual([]);
+    await page.getByText('Map', { exact: true }).click();
+    await page.getByRole('img', { name: /Map of 3 spectra/ }).waitFor();
+  });
+});
+
 /** How many pixels a page is wider than its window. */
 const SIDEWAYS = 'document.documentElement.scrollWidth - document.documentElement.clientWidth';
 
 describe('every page', () => {
-  const PAGES = ['today', 'systems', 'runs', 'members', 'systems/new'];
+  const PAGES = ['today', 'systems', 'runs', 'series', 'members', 'systems/new'];
 
   it('passes axe by WCAG 2.2 AA, in light and dark', async () => {
     const page = await stage.signIn('admin');

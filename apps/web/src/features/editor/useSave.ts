@@ -35,6 +35,8 @@ export function useSave(labId: string, system: System | null, state: DraftState)
   const queryClient = useQueryClient();
   const navigate = useNavigate();
   const [note, setNote] = useState('');
+  /** What the first save made, until the page of the new system has taken over. */
+  const [made, setMade] = useState<{ systemId: string; revision: number } | null>(null);
   const [conflict, setConflict] = useState<SaveConflict | null>(null);
   const mutation = useMutation({
     mutationFn: async ({ document, basedOn }: { document: Record<string, unknown>; basedOn: number }) => {
@@ -54,6 +56,7 @@ export function useSave(labId: string, system: System | null, state: DraftState)
       return { systemId: system.id, revision: number };
     },
     onSuccess: async ({ systemId, revision }) => {
+      if (!system) setMade({ systemId, revision });
       state.forget();
       setNote('');
       await Promise.all([
@@ -70,7 +73,7 @@ export function useSave(labId: string, system: System | null, state: DraftState)
       } else notifyFailure('Not saved', error);
     },
   });
-  const possible = state.checked.system !== null && (state.changed || !system) && !mutation.isPending;
+  const possible = state.checked.system !== null && (state.changed || !system) && !made && !mutation.isPending;
   const document = state.checked.document;
   const open = async ({ systemId }: { systemId: string }) => {
     if (!system) await navigate(`/labs/${labId}/systems/${systemId}`, { replace: true });
@@ -85,6 +88,7 @@ export function useSave(labId: string, system: System | null, state: DraftState)
       if (possible) mutation.mutate({ document, basedOn: state.basedOn }, { onSuccess: (saved) => void open(saved) });
     },
     saved: async () => {
+      if (made) return made;
       if (system && !state.changed) return { systemId: system.id, revision: state.basedOn };
       return mutation.mutateAsync({ document, basedOn: state.basedOn });
     },
