@@ -50,5 +50,10 @@ export const STEPS: readonly Step[] = [
     counts: 'api.json',
   },
   { name: 'build', title: 'build of all three workspaces', command: ['sh', 'scripts/build.sh'] },
+  {
+    name: 'generated',
+    title: 'OpenAPI document is up to date',
+    command: [bin('tsx/dist/cli.mjs'), 'scripts/test/generated.ts'],
+  },
   vitest('e2e', 'the main job in a browser', 'scripts/e2e', { env: { DATABASE_URL: process.env['E2E_DATABASE_URL'] } }),
 ];

@@ -91,6 +91,14 @@ describe('a run', () => {
     expect(bytes.readDoubleLE(4 + header + 8)).toBe(real[0]);
   });
 
+  it('takes the documents inline, and keeps the system', async () => {
+    const made = await owner.post(runs(), { system: system('Inline'), experiment: experiment() });
+    expect(made.body.system.name).toBe('Inline');
+    await reach(made.body.id, 'done');
+    const none = await owner.post(runs(), { experiment: experiment() });
+    expect(none.body.errors.map(({ path }: { path: string }) => path)).toEqual(['systemId', 'revision']);
+  });
+
   it('is offered rather than computed again', async () => {
     const first = await queue(experiment(410));
     const second = await queue(experiment(410));

@@ -1,5 +1,13 @@
-import { createParamDecorator, Injectable, SetMetadata, type CanActivate, type ExecutionContext } from '@nestjs/common';
+import {
+  applyDecorators,
+  createParamDecorator,
+  Injectable,
+  SetMetadata,
+  type CanActivate,
+  type ExecutionContext,
+} from '@nestjs/common';
 import { Reflector } from '@nestjs/core';
+import { ApiExtension } from '@nestjs/swagger';
 import { InjectRepository } from '@nestjs/typeorm';
 import type { Request } from 'express';
 import { Repository } from 'typeorm';
@@ -18,7 +26,7 @@ export interface LabContext {
 const ACTION = 'heddle:action';
 
 /** Names the action of a route below /labs/:labId; without it nobody gets in. */
-export const Can = (action: Action) => SetMetadata(ACTION, action);
+export const Can = (action: Action) => applyDecorators(SetMetadata(ACTION, action), ApiExtension('x-action', action));
 
 /** The LabContext of the request. */
 export const InLab = createParamDecorator((_: unknown, context: ExecutionContext): LabContext => {

@@ -1,5 +1,5 @@
 import { ApiProperty, ApiPropertyOptional } from '@nestjs/swagger';
-import { IsIn, IsInt, IsObject, IsOptional, IsString, IsUUID, Min } from 'class-validator';
+import { IsIn, IsInt, IsObject, IsOptional, IsString, IsUUID, Min, ValidateIf } from 'class-validator';
 import { PageOf, PageQuery } from '../common/paging.js';
 import { PersonDto } from '../common/person.dto.js';
 import { RUN_STATES, type RunState } from './run.states.js';
@@ -34,14 +34,25 @@ export class RunQuery extends PageQuery {
 }
 
 export class NewRunDto {
-  @ApiProperty()
+  @ApiPropertyOptional({ description: 'with its revision; or the document itself as `system`' })
+  @ValidateIf(({ system }: NewRunDto) => system === undefined)
   @IsUUID()
-  systemId: string;
+  systemId?: string;
 
-  @ApiProperty()
+  @ApiPropertyOptional()
+  @ValidateIf(({ system }: NewRunDto) => system === undefined)
   @IsInt({ message: 'must be a whole number' })
   @Min(1)
-  revision: number;
+  revision?: number;
+
+  @ApiPropertyOptional({
+    type: 'object',
+    additionalProperties: true,
+    description: 'heddle.spin-system/1, saved as a new system of the asker',
+  })
+  @IsOptional()
+  @IsObject({ message: 'must be a spin system' })
+  system?: Record<string, unknown>;
 
   @ApiProperty({ type: 'object', additionalProperties: true, description: 'heddle.experiment/1' })
   @IsObject({ message: 'must be an experiment' })

@@ -70,13 +70,21 @@ export class RunsService {
    * the same call twice makes one run.
    */
   async create(context: LabContext, body: NewRunDto, key?: string): Promise<RunDto> {
-    const { systemId, revision } = body;
+    const { systemId, revision } = await this.revisionOf(context, body);
     await this.systems.requireVisible(context, systemId);
     const system = parseSystem((await this.systems.requireRevision(systemId, revision)).document);
     const experiment = parseExperiment(body.experiment);
     const { run, identical } = await this.queue(context, { systemId, revision, system, experiment }, key);
     const dto = await this.toDto(run);
     return identical ? { ...dto, identical } : dto;
+  }
+
+  /** The revision that a request names, or that of the system it brings along. */
+  private async revisionOf(context: LabContext, body: NewRunDto): Promise<{ systemId: string; revision: number }> {
+    if (!body.system) return { systemId: body.systemId!, revision: body.revision! };
+    requirePair(parseSystem(body.system), parseExperiment(body.experiment));
+    const { id } = await this.systems.create(context, { document: body.system });
+    return { systemId: id, revision: 1 };
   }
 
   /** Queues a pair of documents that stands on a revision, which the asker was found to see. */

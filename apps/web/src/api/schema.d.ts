@@ -946,8 +946,13 @@ export interface components {
       nextCursor: string | null;
     };
     NewRunDto: {
-      systemId: string;
-      revision: number;
+      /** @description with its revision; or the document itself as `system` */
+      systemId?: string;
+      revision?: number;
+      /** @description heddle.spin-system/1, saved as a new system of the asker */
+      system?: {
+        [key: string]: unknown;
+      };
       /** @description heddle.experiment/1 */
       experiment: {
         [key: string]: unknown;

@@ -53,6 +53,8 @@ export interface SpectrumPlotProps {
 
 const NO_LINES: readonly Line[] = [];
 const ZOOM = 1.25;
+/** Height above the tallest line that labels of peaks need, as a factor. */
+const LABEL_ROOM = 1.2;
 
 /** A spectrum (or FID) to look at closely: drag, wheel or keys zoom; Shift with the wheel, or up and down, scale it vertically. */
 export function SpectrumPlot(props: SpectrumPlotProps) {
@@ -170,7 +172,10 @@ export function SpectrumPlot(props: SpectrumPlotProps) {
     u.batch(() => {
       u.setData(data, false);
       u.setScale('x', { min: range.low, max: range.high });
-      u.setScale('y', { min: limits.least / scale, max: limits.most / scale });
+      u.setScale('y', {
+        min: limits.least / scale,
+        max: (limits.most / scale) * (props.peaks?.length ? LABEL_ROOM : 1),
+      });
     });
   });
 
