@@ -87,7 +87,7 @@ export function Bench({ labId, system, revision, start }: BenchProps) {
             onRange={setRange}
             experimentSound={experiment.checked.experiment !== null}
           />
-          <Tables state={state} selected={selected} onSelect={setSelected} />
+          <Tables state={state} selected={selected} onSelect={setSelected} experiment={experiment.checked.experiment} />
         </div>
         <aside className={classes.side} aria-label="Experiment">
           <ExperimentPanel

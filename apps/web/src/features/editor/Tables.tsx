@@ -1,5 +1,7 @@
 import { Button, Tabs, TextInput, Textarea, Text } from '@mantine/core';
 import { useState } from 'react';
+import type { Experiment } from '@heddle/shared';
+import { RatesPanel } from '../rates/RatesPanel';
 import { GeometryImport } from '../geometry/GeometryImport';
 import { notifyDone } from '../../lib/forms';
 import { Grid } from './Grid';
@@ -138,10 +140,13 @@ export function Tables({
   state,
   selected,
   onSelect,
+  experiment,
 }: {
   state: DraftState;
   selected: string | null;
   onSelect(id: string | null): void;
+  /** For numbers that depend on the field. */
+  experiment: Experiment | null;
 }) {
   const { draft, checked, edit } = state;
   const [importing, setImporting] = useState(false);
@@ -170,6 +175,7 @@ export function Tables({
           <Tabs.Tab value="tensors">Tensors{tensorErrors > 0 && ` (${tensorErrors} to mend)`}</Tabs.Tab>
           <Tabs.Tab value="positions">Positions{placeErrors > 0 && ` (${placeErrors} to mend)`}</Tabs.Tab>
           <Tabs.Tab value="exchange">Exchange{exchangeErrors > 0 && ` (${exchangeErrors} to mend)`}</Tabs.Tab>
+          <Tabs.Tab value="rates">Relaxation</Tabs.Tab>
           <Tabs.Tab value="notes">Notes</Tabs.Tab>
         </Tabs.List>
         <Tabs.Panel value="nuclei" className={classes.sheets}>
@@ -227,6 +233,9 @@ export function Tables({
             <h3 className={classes.sheetTitle}>Exchange between them</h3>
             <Sheet state={state} table="exchange" label="Exchange" columns={EXCHANGE_COLUMNS} />
           </div>
+        </Tabs.Panel>
+        <Tabs.Panel value="rates" className={classes.rates}>
+          <RatesPanel system={checked.system} experiment={experiment} />
         </Tabs.Panel>
         <Tabs.Panel value="notes" className={classes.notes}>
           <Textarea

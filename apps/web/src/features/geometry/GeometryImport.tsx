@@ -110,8 +110,8 @@ function Choice({ geometry, onUse }: { geometry: Geometry; onUse(found: Geometry
           </Group>
         ))}
         <TextInput
-          label="Couple pairs up to, \u00c5"
-          w={150}
+          label={'Couple pairs up to, \u00c5'}
+          w={190}
           value={cutOff}
           error={reach >= 0 ? undefined : 'must be a distance'}
           onChange={({ currentTarget: { value } }) => setCutOff(value)}
