@@ -9,7 +9,7 @@ async function main(): Promise<void> {
   const { port, host } = readSettings();
   const app = await NestFactory.create<NestExpressApplication>(AppModule, {
     abortOnError: false,
-    logger: ['log', 'warn', 'error'],
+    logger: ['warn', 'error'],
   });
   configure(app);
   await app.listen(port, host);
