@@ -23,7 +23,7 @@ export function printHeader(withPeers: boolean): void {
 }
 
 export function printRow(row: Row): void {
-  let line = `${row.case.padEnd(24)}${row.method.padEnd(22)}${seconds(row.first)}${seconds(row.best)}`;
+  let line = `${row.case.padEnd(24)}${row.method.slice(0, 20).padEnd(22)}${seconds(row.first)}${seconds(row.best)}`;
   if (row.peer !== undefined) {
     line += `  ${row.peer.padEnd(24)}${seconds(row.peerSeconds!)}${row.ratio!.toFixed(2).padStart(15)}`;
     line += row.accuracy!.toExponential(1).padStart(11);

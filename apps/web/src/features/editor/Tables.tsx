@@ -1,12 +1,13 @@
 import { Button, Tabs, TextInput, Textarea, Text } from '@mantine/core';
 import { useState } from 'react';
 import type { Experiment } from '@heddle/shared';
+import { TensorPanel } from '../tensors/TensorPanel';
 import { RatesPanel } from '../rates/RatesPanel';
 import { GeometryImport } from '../geometry/GeometryImport';
 import { notifyDone } from '../../lib/forms';
 import { Grid } from './Grid';
 import { cellKey } from './logic/check';
-import { isBlankRow, type Row } from './logic/draft';
+import { isBlankRow, type Draft, type Row } from './logic/draft';
 import { withGeometry } from './logic/geometry';
 import { addRow, followRename, moveRow, removeRow, setCell, setField } from './logic/edit';
 import {
@@ -206,6 +207,21 @@ export function Tables({
               label="Quadrupolar couplings"
               columns={[NAME, ...QUADRUPOLE_COLUMNS]}
               fixed
+            />
+          </div>
+          <div className={classes.whole}>
+            <TensorPanel
+              system={checked.system}
+              onShift={(id, { span, skew, iso }) =>
+                edit((now) => {
+                  const row = now.nuclei.find(({ cells }) => cells.id?.trim() === id);
+                  if (!row) return now;
+                  const put = (draft: Draft, field: string, value: number) =>
+                    setCell(draft, 'nuclei', row.key, field, String(+value.toPrecision(10)));
+                  const turned = put(put(now, 'csa.span', span), 'csa.skew', skew);
+                  return iso === undefined ? turned : put(turned, 'shift', iso);
+                })
+              }
             />
           </div>
         </Tabs.Panel>
